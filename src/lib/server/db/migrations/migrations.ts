@@ -1,0 +1,5 @@
+import { firstTables } from './0001-first-tables';
+import type { Migration } from './migration';
+
+/** Every migration in order. A list, not a folder scan: the built server is one bundle. */
+export const MIGRATIONS: readonly Migration[] = [firstTables];

@@ -1,0 +1,44 @@
+import {
+	Model,
+	type CreationOptional,
+	type InferAttributes,
+	type InferCreationAttributes,
+	type Sequelize
+} from 'sequelize';
+import type { RunbookState } from '$lib/domain/runbook/runbook';
+import { integer, integerOrNull, serial, text, textOrNull } from './columns';
+
+/** A runbook's place and state; its text lies in its revisions. */
+export class RunbookModel extends Model<
+	InferAttributes<RunbookModel>,
+	InferCreationAttributes<RunbookModel>
+> {
+	declare id: CreationOptional<number>;
+	declare slug: string;
+	declare state: RunbookState;
+	declare ownerId: number | null;
+	declare reviewerId: number | null;
+	declare reviewDue: string | null;
+	declare revision: number;
+	declare publishedRevision: number | null;
+	declare createdAt: string;
+	declare updatedAt: string;
+
+	static define(sequelize: Sequelize): void {
+		RunbookModel.init(
+			{
+				id: serial(),
+				slug: text(),
+				state: text(),
+				ownerId: integerOrNull(),
+				reviewerId: integerOrNull(),
+				reviewDue: textOrNull(),
+				revision: integer(),
+				publishedRevision: integerOrNull(),
+				createdAt: text(),
+				updatedAt: text()
+			},
+			{ sequelize, modelName: 'RunbookModel', tableName: 'runbooks' }
+		);
+	}
+}
