@@ -28,12 +28,16 @@ export default {
 				mono: 'var(--font-mono)'
 			},
 			fontSize: {
+				xs: 'var(--size-tiny)',
 				sm: 'var(--size-small)',
+				table: 'var(--size-table)',
 				base: 'var(--size-base)',
 				lg: 'var(--size-large)',
 				xl: 'var(--size-title)'
 			},
-			maxWidth: { text: '72ch', page: '92rem' },
+			maxWidth: { text: '72ch', sentence: '60ch', page: '92rem' },
+			minHeight: { target: 'var(--target)' },
+			minWidth: { target: 'var(--target)' },
 			borderRadius: { DEFAULT: '3px' }
 		}
 	},
