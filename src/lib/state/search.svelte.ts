@@ -46,8 +46,10 @@ export class Search {
 	async #fetch(words: string): Promise<void> {
 		const control = new AbortController();
 		this.#running = control;
-		const query = new URLSearchParams({ q: words, limit: String(LIMIT) });
-		const answer = await readHits(`${this.#url}?${query}`, control.signal);
+		const answer = await readHits(
+			`${this.#url}?q=${encodeURIComponent(words)}&limit=${LIMIT}`,
+			control.signal
+		);
 		if (control.signal.aborted) return;
 		this.busy = false;
 		this.#running = null;
