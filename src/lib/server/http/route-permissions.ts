@@ -1,0 +1,57 @@
+import type { Permission } from '$lib/domain/person/permissions';
+
+/** `open`: without signing in. */
+export type Access = Permission | 'open';
+export type Method = 'GET' | 'POST' | 'PATCH' | 'PUT' | 'DELETE';
+
+/** Who may call a route, by method: a page's load is GET, its form actions are POST. */
+export type RouteAccess = Partial<Record<Method, Access>> & {
+	/** Form actions that need more than POST says, by name. */
+	actions?: Record<string, Access>;
+};
+
+/**
+ * Every route and who may call it, by route id (the folder under src/routes). What is not in here is refused:
+ * a route without its row cannot be reached. The service behind it asks again, with the thing in hand.
+ */
+export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
+	'/(public)/sign-in': { GET: 'open', POST: 'open' },
+	'/(public)/welcome/[token]': { GET: 'open', POST: 'open' },
+	'/sign-out': { POST: 'account.own' },
+
+	'/(app)': { GET: 'watch.read', actions: { take: 'incident.write' } },
+	'/(app)/account': { GET: 'account.own', POST: 'account.own' },
+	// Draws the error of a page that a role doesn't open; says nothing of any other page.
+	'/(app)/refused': { GET: 'account.own' },
+	'/(app)/gauge': { GET: 'reading.make', POST: 'reading.make' },
+	'/(app)/runbooks': { GET: 'runbook.read' },
+	'/(app)/runbooks/[slug]': { GET: 'runbook.read', actions: { start: 'attempt.write' } },
+	'/(app)/runbooks/[slug]/follow': { GET: 'attempt.read', POST: 'attempt.write' },
+	'/(app)/search': { GET: 'search.read' },
+	'/(app)/symptoms': { GET: 'symptom.read' },
+	'/(app)/symptoms/[id]': { GET: 'symptom.read' },
+
+	'/api/v1/health': { GET: 'open' },
+	'/api/v1/sizing': { POST: 'reading.make' },
+	'/api/v1/watch': { GET: 'watch.read' }
+};
+
+/** What a call needs; null where the route or the method is not in the table. */
+export function findAccess(routeId: string, method: string, actionName: string | null): Access | null {
+	const row = ROUTE_PERMISSIONS[routeId];
+	if (!row) return null;
+	const named = method === 'POST' && actionName !== null ? row.actions?.[actionName] : undefined;
+	return named ?? row[toMethod(method)] ?? null;
+}
+
+/** The methods of a route, as `Allow` lists them. */
+export function listMethods(routeId: string): string[] {
+	const { actions: _actions, ...methods } = ROUTE_PERMISSIONS[routeId] ?? {};
+	const names = Object.keys(methods);
+	return names.includes('GET') ? ['HEAD', ...names] : names;
+}
+
+/** HEAD is allowed wherever GET is. Any other word finds no row. */
+function toMethod(method: string): Method {
+	return (method === 'HEAD' ? 'GET' : method) as Method;
+}
