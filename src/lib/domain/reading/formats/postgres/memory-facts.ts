@@ -72,7 +72,8 @@ function hashOf(node: PlanNode): HashFacts | null {
 }
 
 function aggregateOf(part: PlanNode, who: string): AggregateFacts | null {
-	const plannedPartitions = figure(part['Planned Partitions']);
+	// Planned once for all processes: it stands at the leader.
+	const plannedPartitions = who === 'leader' ? figure(part['Planned Partitions']) : null;
 	const batches = figure(part['HashAgg Batches']);
 	const peakKb = figure(part['Peak Memory Usage']);
 	// The text form leaves a zero of planned partitions out; without run-time figures it says nothing.

@@ -55,7 +55,18 @@ function readConditions(node: PlanNode, facts: OperatorFacts): void {
 	for (const key of OTHER_CONDITIONS) facts.otherConditions.push(...wordList(node[key]));
 	facts.sortKey = wordList(node['Sort Key']);
 	facts.presortedKey = wordList(node['Presorted Key']);
-	facts.groupKey = wordList(node['Group Key']);
+	facts.groupKey = node['Grouping Sets'] === undefined ? wordList(node['Group Key']) : groupingSets(node);
+}
+
+/** Each set of GROUPING SETS as the text form prints it: "a, b", and "()" for the grand total. */
+function groupingSets(node: PlanNode): string[] {
+	return records(node['Grouping Sets']).flatMap((set) =>
+		['Group Keys', 'Hash Keys'].flatMap((key) => {
+			const sets = set[key];
+			if (!Array.isArray(sets)) return [];
+			return sets.map((columns) => wordList(columns).join(', ') || '()');
+		})
+	);
 }
 
 function readCounts(node: PlanNode, facts: OperatorFacts, type: string): void {
@@ -63,7 +74,7 @@ function readCounts(node: PlanNode, facts: OperatorFacts, type: string): void {
 	// The text form leaves zeros out: a condition of a node that ran without a figure removed nothing.
 	const removed = (key: string, condition: boolean) =>
 		ran ? (figure(node[key]) ?? (condition ? 0 : null)) : null;
-	const rechecks = type === 'Bitmap Heap Scan' || type === 'Index Scan';
+	const rechecks = type === 'Bitmap Heap Scan' || type === 'Index Scan' || type === 'Index Only Scan';
 	facts.removedByFilter = removed('Rows Removed by Filter', facts.filter !== null);
 	facts.removedByJoinFilter = removed('Rows Removed by Join Filter', facts.joinFilter !== null);
 	facts.removedByRecheck = removed(
@@ -72,8 +83,8 @@ function readCounts(node: PlanNode, facts: OperatorFacts, type: string): void {
 	);
 	facts.heapFetches = ran ? figure(node['Heap Fetches']) : null;
 	if (type === 'Bitmap Heap Scan' && ran) {
-		facts.exactBlocks = overProcesses(node, 'Exact Heap Blocks');
-		facts.lossyBlocks = overProcesses(node, 'Lossy Heap Blocks');
+		facts.exactBlocks = overProcesses(node, 'Exact Heap Blocks') ?? 0;
+		facts.lossyBlocks = overProcesses(node, 'Lossy Heap Blocks') ?? 0;
 	}
 	facts.workersPlanned = figure(node['Workers Planned']);
 	facts.workersLaunched = figure(node['Workers Launched']);
@@ -107,7 +118,7 @@ const KNOWN = new Set(
 		'WAL Bytes,WAL Buffers Full,Hash Buckets,Original Hash Buckets,Hash Batches,Original Hash Batches,' +
 		'Peak Memory Usage,Sort Method,Sort Space Used,Sort Space Type,Full-sort Groups,Pre-sorted Groups,' +
 		'Planned Partitions,HashAgg Batches,Disk Usage,Cache Hits,Cache Misses,Cache Evictions,Cache Overflows,' +
-		'Storage,Maximum Storage,Plans,Workers,JIT,' +
+		'Storage,Maximum Storage,Plans,Workers,JIT,Group Sets,' +
 		OTHER_CONDITIONS.join(',')
 	).split(',')
 );
@@ -116,8 +127,9 @@ function readExtra(node: PlanNode, facts: OperatorFacts): void {
 	for (const key in node) {
 		if (KNOWN.has(key)) continue;
 		const value = node[key];
-		// False is what the text form leaves out; Forward and Single Copy likewise.
-		if (value === false || value === 'false' || value === 'Forward' || isRecord(value)) continue;
+		// The text form leaves these out.
+		if (value === false || value === 0 || value === 'false' || value === 'Forward' || isRecord(value))
+			continue;
 		if (typeof value === 'string' || typeof value === 'number' || value === true)
 			facts.extra[key] = String(value);
 		else if (Array.isArray(value)) facts.extra[key] = wordList(value).join(', ');
