@@ -1,0 +1,31 @@
+import type { Operator } from '$lib/domain/reading/operator';
+import type { Reading } from '$lib/domain/reading/reading';
+import { formatBytes, formatRows } from '$lib/domain/sizing/units';
+import { nameOperator } from './operator-words';
+
+/** The one sentence that a reading answers with, before any figure: its trail, its heaviest symptom, or that all is well. */
+export function sayWhatOverflows(reading: Reading): string {
+	const trail = reading.trails[0];
+	if (trail !== undefined) return trail.sentence;
+	const heaviest = reading.symptoms[0];
+	if (heaviest !== undefined) return heaviest.summary;
+	if (reading.spills !== null && reading.spills.files > 0)
+		return `${formatRows(reading.spills.files)} temporary ${reading.spills.files === 1 ? 'file' : 'files'}, ${formatBytes(reading.spills.bytes)} in all.`;
+	if (reading.kind === 'unknown') return 'This is neither a plan nor a log that can be read.';
+	return reading.kind === 'plan'
+		? 'Nothing overflows and no estimate is far off.'
+		: 'No temporary file in this log.';
+}
+
+/** The operators that the sentence should set off: where the trail begins and where it overflows. */
+export function wordsToMark(reading: Reading, operators: ReadonlyMap<string, Operator>): string[] {
+	const trail = reading.trails[0];
+	if (trail === undefined) return [];
+	const paths = [trail.steps[0]?.operator, trail.overflow ?? trail.steps.at(-1)?.operator];
+	return paths.flatMap((path) => {
+		const operator = path === undefined ? undefined : operators.get(path);
+		if (operator === undefined) return [];
+		const { what, how } = nameOperator(operator);
+		return how === null ? [what] : [`${what} ${how}`, what];
+	});
+}
