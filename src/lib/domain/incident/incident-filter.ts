@@ -16,17 +16,18 @@ export const INCIDENT_SORTS = [
 ] as const;
 export type IncidentSort = (typeof INCIDENT_SORTS)[number];
 
-/** A parameter that may be given several times; always read as a list. */
+/** A parameter that may be given several times: any of the values will do. */
 function repeatable<T extends z.ZodType>(item: T) {
-	return z.preprocess(
-		(value) => (value === undefined || value === '' ? [] : Array.isArray(value) ? value : [value]),
-		z.array(item).max(50, 'At most 50 values.')
-	);
+	return z.array(item).max(50, 'At most 50 values.').default([]);
 }
 
-/** A parameter of a form that is sent even when it is left empty. */
-function optional<T extends z.ZodType>(inner: T) {
-	return z.preprocess((value) => (value === '' ? undefined : value), inner.optional());
+/** Text to be looked up. The database ends a text at a null character. */
+function searchText(most: number) {
+	return z
+		.string()
+		.trim()
+		.max(most, `At most ${most} characters.`)
+		.refine((text) => !text.includes('\0'), 'No null characters.');
 }
 
 const dayOrTime = z.union([z.iso.date(), z.iso.datetime({ offset: true })], {
@@ -41,38 +42,34 @@ const periodEnd = dayOrTime.transform((text) =>
 	text.includes('T') ? new Date(text).toISOString() : `${text}T23:59:59.999Z`
 );
 
-export const listLimit = z.coerce
-	.number({ error: 'Give a whole number from 1 to 200.' })
-	.int('Give a whole number from 1 to 200.')
-	.min(1, 'At least 1.')
-	.max(200, 'At most 200.')
-	.default(50);
+const owner = z
+	.string()
+	.regex(/^(me|none|[1-9]\d{0,14})$/, "Give a person's id, me or none.")
+	.transform((text) => (text === 'me' || text === 'none' ? text : Number(text)));
+
+const pageSize = 'Give a whole number from 1 to 200.';
 
 /** Query of a list that knows nothing but pages. */
-export const pageQuery = z.object({ limit: listLimit, cursor: optional(z.string().max(500)) });
+export const pageQuery = z.object({
+	limit: z.number(pageSize).int(pageSize).min(1, pageSize).max(200, pageSize).default(50),
+	cursor: z.string().max(500).optional()
+});
 export type PageQuery = z.infer<typeof pageQuery>;
 
 /** Query of the list of incidents: what the URL of the page and of the call may hold. */
 export const incidentFilter = pageQuery.extend({
 	state: repeatable(z.enum(INCIDENT_STATES)),
-	severity: repeatable(z.coerce.number().int().min(1).max(4)),
-	service: repeatable(z.string().trim().min(1).max(200)),
+	severity: repeatable(z.number().int().min(1).max(4)),
+	service: repeatable(searchText(200).min(1)),
 	engine: repeatable(z.enum(ENGINES)),
 	symptom: repeatable(z.enum(SYMPTOM_IDS)),
 	/** A person's id, `me`, or `none` for those that nobody is on. */
-	owner: optional(
-		z.union([z.enum(['me', 'none']), z.coerce.number().int().positive()], {
-			error: "Give a person's id, me or none."
-		})
-	),
+	owner: owner.optional(),
 	/** Began (or, where that isn't known, was noticed) at or after. */
-	from: optional(periodStart),
+	from: periodStart.optional(),
 	/** Began at or before; a day counts to its end. */
-	to: optional(periodEnd),
-	q: optional(z.string().trim().max(400, 'At most 400 characters.')),
-	sort: z.preprocess(
-		(value) => (value === '' ? undefined : value),
-		z.enum(INCIDENT_SORTS).default('-startedAt')
-	)
+	to: periodEnd.optional(),
+	q: searchText(400).optional(),
+	sort: z.enum(INCIDENT_SORTS).default('-startedAt')
 });
 export type IncidentFilter = z.infer<typeof incidentFilter>;

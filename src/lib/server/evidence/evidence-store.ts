@@ -71,6 +71,11 @@ export function findEvidence(incidentNumber: number, id: number): Promise<Eviden
 	});
 }
 
+/** The piece of evidence of that id, in whatever incident; null: there is none. */
+export function findEvidenceById(id: number): Promise<EvidenceRow | null> {
+	return selectOne<EvidenceRow>(`${FROM} WHERE e.id = :id`, { id });
+}
+
 /** The same bytes under this incident (null: under none), other than the row `except`; null: not there. */
 export function findSameBytes(
 	incidentNumber: number | null,

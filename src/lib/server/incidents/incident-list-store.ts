@@ -3,10 +3,12 @@ import type { Place } from '../api/cursor';
 import { select, selectOne, type Replacements } from '../db/query';
 import { SUMMARY_COLUMNS, SUMMARY_JOINS, type IncidentRow } from './incident-store';
 
-/** A filter with the person behind `me` put in. */
-export type ListFilter = Omit<IncidentFilter, 'owner' | 'cursor'> & {
+/** A filter with the person behind `me` put in, and the text taken apart. */
+export type ListFilter = Omit<IncidentFilter, 'owner' | 'cursor' | 'q'> & {
 	owner: number | 'none' | null;
-	/** Full-text query made from `q`; null: no words asked for. */
+	/** This incident alone; null: any. */
+	number: number | null;
+	/** What the full-text index is asked for; null: no words. */
 	match: string | null;
 };
 
@@ -66,6 +68,10 @@ function toConditions(filter: ListFilter): Conditions {
 	if (filter.to !== undefined) {
 		sql.push(`${BEGAN} <= :periodEnd`);
 		values['periodEnd'] = filter.to;
+	}
+	if (filter.number !== null) {
+		sql.push('i.number = :number');
+		values['number'] = filter.number;
 	}
 	if (filter.match !== null) {
 		sql.push('i.number IN (SELECT t.rowid FROM incidentText t WHERE incidentText MATCH :match)');
