@@ -1,0 +1,115 @@
+import type { OperatorKind } from '../reading/operator';
+import { walkOperators } from '../reading/operator';
+import type { Symptom, Trail } from '../reading/reading';
+import { findToldSymptoms } from './told-symptoms';
+import type { CauseId, SymptomId } from '../symptom/symptom';
+import { CAUSE_IDS } from '../symptom/symptom';
+import { readCourse, readMagnitude } from './figures';
+import type { EvidenceOfIncident, EvidenceProfile, PrecedentProfile, ProfileSymptom } from './precedent';
+import { findTraits, indexByPath } from './traits';
+
+/** Bounds, so that a log of many statements or a plan of thousands of tables doesn't fill the index. */
+const MOST_FINGERPRINTS = 5;
+const MOST_RELATIONS = 20;
+const MOST_SHAPES = 4;
+const MOST_TRAITS = 40;
+
+/** What an incident says of itself beside its readings. */
+export interface ProfileFields {
+	/** Title and narrative: symptoms told in words are looked for in it. */
+	text: string;
+	service: string | null;
+	engine: PrecedentProfile['engine'];
+	database: string | null;
+	startedAt: string | null;
+	/** As written: an id of the catalogue or free text. */
+	cause: string | null;
+}
+
+/** The profile of an incident: what its evidence shows, and where it happened. */
+export function profileOf(fields: ProfileFields, evidence: EvidenceProfile): PrecedentProfile {
+	return {
+		...evidence,
+		symptoms: addTold(evidence.symptoms, fields.text),
+		service: fields.service,
+		engine: fields.engine,
+		database: fields.database,
+		startedAt: fields.startedAt,
+		confirmedCause: CAUSE_IDS.find((id) => id === fields.cause) ?? null
+	};
+}
+
+/** What the readings of one incident say, taken together: one plan saved in several forms counts once. */
+export function profileEvidence(readings: readonly EvidenceOfIncident[]): EvidenceProfile {
+	const symptoms = new Map<SymptomId, ProfileSymptom>();
+	const causes = new Map<CauseId, number>();
+	const fingerprints = new Set<string>();
+	const relations = new Set<string>();
+	const shapes = new Set<string>();
+	const traits = new Set<string>();
+	for (const reading of readings) {
+		for (const symptom of reading.symptoms) keepHeavier(symptoms, toProfileSymptom(symptom, reading));
+		for (const { id, confidence } of reading.causes)
+			causes.set(id, Math.max(confidence, causes.get(id) ?? 0));
+		for (const fingerprint of fingerprintsOf(reading)) fingerprints.add(fingerprint);
+		if (reading.plan === null) continue;
+		for (const { relation } of walkOperators(reading.plan.root))
+			if (relation !== null) relations.add(relation);
+		for (const shape of shapesOf(reading.plan.root, reading.trails)) shapes.add(shape);
+		for (const trait of findTraits(reading.plan, reading.trails)) traits.add(trait);
+	}
+	return {
+		symptoms: [...symptoms.values()].sort((one, other) => other.weight - one.weight),
+		causes: [...causes]
+			.map(([id, confidence]) => ({ id, confidence }))
+			.sort((one, other) => other.confidence - one.confidence),
+		fingerprints: [...fingerprints].slice(0, MOST_FINGERPRINTS),
+		relations: [...relations].slice(0, MOST_RELATIONS),
+		shapes: [...shapes].slice(0, MOST_SHAPES),
+		traits: [...traits].slice(0, MOST_TRAITS)
+	};
+}
+
+function keepHeavier(symptoms: Map<SymptomId, ProfileSymptom>, found: ProfileSymptom): void {
+	const known = symptoms.get(found.id);
+	if (known === undefined || known.weight < found.weight) symptoms.set(found.id, found);
+}
+
+function toProfileSymptom(symptom: Symptom, reading: EvidenceOfIncident): ProfileSymptom {
+	const place = reading.plan === null || symptom.operator === null ? null : symptom.operator;
+	const operator =
+		reading.plan === null || place === null ? undefined : indexByPath(reading.plan.root).get(place);
+	return {
+		id: symptom.id,
+		weight: symptom.weight,
+		magnitude: readMagnitude(symptom),
+		course: readCourse(symptom),
+		operator: operator?.kind ?? null,
+		relation: operator?.relation ?? null,
+		told: false
+	};
+}
+
+function fingerprintsOf(reading: EvidenceOfIncident): string[] {
+	const spilling = reading.spills?.statements.map((statement) => statement.fingerprint) ?? [];
+	return reading.statement === null ? spilling : [reading.statement.fingerprint, ...spilling];
+}
+
+function shapesOf(root: Parameters<typeof indexByPath>[0], trails: readonly Trail[]): string[] {
+	const operators = indexByPath(root);
+	return trails.map((trail) =>
+		trail.steps.map((step): OperatorKind => operators.get(step.operator)?.kind ?? 'other').join('>')
+	);
+}
+
+/** Adds what the narrative tells of and no evidence shows. */
+function addTold(shown: readonly ProfileSymptom[], text: string): ProfileSymptom[] {
+	const known = new Set(shown.map((symptom) => symptom.id));
+	const told: ProfileSymptom[] = [];
+	for (const id of findToldSymptoms(text)) {
+		if (known.has(id)) continue;
+		known.add(id);
+		told.push({ id, weight: 0.5, magnitude: null, course: null, operator: null, relation: null, told: true });
+	}
+	return [...shown, ...told];
+}

@@ -1,0 +1,71 @@
+import { stem } from './stem';
+import { STOP_WORDS } from './stop-words';
+
+/** One word of a text and where it stands in it. */
+export interface Word {
+	/** Lower case, accents folded. */
+	text: string;
+	start: number;
+	end: number;
+}
+
+/** Letters, digits, `_` and `$`, held together by single dots: `yard_move.moved_at` is one name. */
+const NAME = /[\p{L}\p{N}_$]+(?:\.[\p{L}_$][\p{L}\p{N}_$]*)*/gu;
+const ACCENTS = /\p{M}/gu;
+/** Where one word of a camelCase name ends. */
+const HUMP = /(?<=[\p{Ll}\p{N}])(?=\p{Lu})/u;
+
+function fold(text: string): string {
+	return text.normalize('NFKD').replace(ACCENTS, '').toLowerCase();
+}
+
+/**
+ * The words of a text in order. A name with underscores, dots or humps yields its parts
+ * ("yard_move.movedAt" yields yard, move, moved, at); the whole is what `findNames` is for.
+ */
+export function* findWords(text: string): Generator<Word> {
+	for (const match of text.matchAll(NAME)) {
+		let start = match.index;
+		for (const piece of match[0].split(/([._$]+)/)) {
+			for (const part of piece.split(HUMP)) {
+				if (/[\p{L}\p{N}]/u.test(part)) {
+					yield { text: fold(part), start, end: start + part.length };
+				}
+				start += part.length;
+			}
+		}
+	}
+}
+
+/** Names that are more than one word, whole: "yard_move.moved_at" yields itself, yard_move and moved_at. */
+export function findNames(text: string): string[] {
+	const names: string[] = [];
+	for (const match of text.matchAll(NAME)) {
+		if (!/[._\p{Ll}][._\p{Lu}\p{L}]/u.test(match[0])) continue;
+		const folded = fold(match[0]);
+		const pieces = folded.split('.');
+		for (const piece of pieces) {
+			if (/[\p{L}\p{N}]_+[\p{L}\p{N}]/u.test(piece) || (pieces.length === 1 && HUMP.test(match[0])))
+				names.push(piece);
+		}
+		if (pieces.length > 1) names.push(folded);
+	}
+	return names;
+}
+
+/** The stems of a text in order, stop words left out. */
+export function stemsOf(text: string): string[] {
+	const stems: string[] = [];
+	for (const word of findWords(text)) {
+		if (!STOP_WORDS.has(word.text)) stems.push(stem(word.text));
+	}
+	return stems;
+}
+
+/**
+ * Everything a text can be found under: its stems in order, then its names whole. The names stand behind, so
+ * that a phrase finds the words of a name whether it was written with underscores or with spaces.
+ */
+export function termsOf(text: string): string[] {
+	return [...stemsOf(text), ...findNames(text)];
+}

@@ -1,0 +1,67 @@
+import type { ReasonKind } from './precedent';
+
+/**
+ * Every number that the ranking of precedents turns on. DESIGN.md says how they were found; the bench
+ * (`npm run bench:precedents -- DIR`) says what a change does.
+ */
+
+/**
+ * What each respect counts in the fused score, before it is divided by the sum of those that the incident
+ * asked about can be compared on. Each 0..1; 0 switches a part off.
+ */
+export const PART_WEIGHTS: Readonly<Record<ReasonKind, number>> = {
+	/** Useful 0.1..0.4. Higher: old tales with the same words come before new ones with the same fault. */
+	words: 0.22,
+	/** Useful 0.2..0.5. Higher: what is seen counts more than why it happened. */
+	symptoms: 0.32,
+	/** Useful 0.15..0.4. Higher: one wrong guess of the rules pulls more wrong precedents up. */
+	cause: 0.26,
+	/** Useful 0.1..0.3. Higher: plans of one shape meet although their faults differ. */
+	statement: 0.17,
+	/** Useful 0..0.1. Higher: one's own service comes first whatever its fault. */
+	setting: 0.03,
+	/** Useful 0.1..0.5. Higher: one person's verdict outdoes the evidence. Counts only where there is one. */
+	verdict: 0.3
+};
+
+/**
+ * The part of the question's own BM25 score at which a text counts as fully alike. Useful 0.3..0.8; higher:
+ * words weigh less in all but near copies. 0 is invalid.
+ */
+export const FULL_WORDS_SHARE = 0.5;
+
+/** How far a symptom's weight (0..1) sets what it counts. 0: a slight one counts like a heavy one. Useful 0..0.7. */
+export const HEAVINESS_COUNTS = 0.3;
+/** Taken off a common symptom when one spill was planned and the other grew. Useful 0..0.4. */
+export const COURSE_COUNTS = 0.25;
+/** Taken off when it shows at another kind of operator. Useful 0..0.4. */
+export const PLACE_COUNTS = 0.2;
+/** Taken off when its figures lie three decades apart, less when nearer. Useful 0..0.3. */
+export const DECADE_COUNTS = 0.15;
+/** What a symptom that only the narrative tells of counts beside one that evidence shows. Useful 0..0.6. */
+export const TOLD_COUNTS = 0.4;
+
+/** What the rules' guesses count once a person has confirmed a cause. Useful 0..0.5. */
+export const DOUBT_AFTER_CONFIRMATION = 0.25;
+
+/** Likeness of two statements that are not the same; the three add up to 0.8, so that the same one stands out. */
+export const TRAITS_COUNT = 0.45;
+export const SHAPE_COUNTS = 0.2;
+export const RELATIONS_COUNT = 0.15;
+
+/** Same service, engine, database; they add up to 1. */
+export const SERVICE_COUNTS = 0.4;
+export const ENGINE_COUNTS = 0.4;
+export const DATABASE_COUNTS = 0.2;
+
+/** What a verdict on the pair says, 0..1. */
+export const VERDICT_SAME = 1;
+export const VERDICT_RELATED = 0.6;
+/** What is left of the score of a pair that somebody refused. Useful 0..0.7; 1 would ignore the refusal. */
+export const REFUSED_KEEPS = 0.4;
+
+/** Scores nearer than this are a tie: known outcome first, then the newer one. */
+export const TIE = 0.002;
+
+/** A reason with a smaller share than this isn't worth a line. */
+export const SMALLEST_SHARE = 0.04;
