@@ -23,3 +23,12 @@ export function can(actor: Actor, permission: Permission, subject?: Subject): bo
 		includesRole(actor.role, rule.own)
 	);
 }
+
+/**
+ * Whether the actor could be allowed on some subject: what can be said before the thing is known. The
+ * service asks `can` once more with the thing in hand.
+ */
+export function couldEver(actor: Actor, permission: Permission): boolean {
+	const rule: { from: Role; own?: Role } = PERMISSIONS[permission];
+	return includesRole(actor.role, rule.own ?? rule.from);
+}

@@ -1,0 +1,20 @@
+import type { Handle } from '@sveltejs/kit';
+import { countTokenGuess, tokenWaitSeconds } from '$lib/server/people/sign-in-limits';
+import * as tokens from '$lib/server/sessions/tokens-service';
+import { readBearer } from '../credentials';
+import { refuse } from '../refuse';
+
+/** Sets the actor by `Authorization: Bearer cw_…`, on API routes alone: pages are for people. */
+export const readToken: Handle = async ({ event, resolve }) => {
+	const bearer = readBearer(event.request);
+	if (bearer === null || !event.route.id?.startsWith('/api/')) return resolve(event);
+	const address = event.getClientAddress();
+	const waitSeconds = await tokenWaitSeconds(address);
+	if (waitSeconds !== null) {
+		const detail = 'Too many unknown tokens came from this address.';
+		return refuse(event, { code: 'rate_limited', detail, retryAfterSeconds: waitSeconds });
+	}
+	event.locals.actor = await tokens.validate(bearer);
+	if (!event.locals.actor) await countTokenGuess(address);
+	return resolve(event);
+};
