@@ -1,0 +1,70 @@
+import { walkOperators, type Operator } from '$lib/domain/reading/operator';
+import type { Engine, OperatorSizing, Reading } from '$lib/domain/reading/reading';
+import { defaultHashMemMultiplier, readMajorVersion } from '$lib/domain/sizing/layout';
+import type { SizingInput } from '$lib/domain/sizing/sizing';
+import { readMemoryKb } from '$lib/domain/sizing/units';
+
+/** PostgreSQL's default work_mem (manual 15, section 20.4.1). */
+const DEFAULT_WORK_MEM_KB = 4096;
+/** Sessions assumed at first: a figure to be changed, not a finding. */
+const ASSUMED_SESSIONS = 40;
+
+/** What the panel starts with where nothing was read: a hash table that just overflows at the defaults. */
+export const EXAMPLE: Required<
+	Pick<SizingInput, 'kind' | 'rows' | 'width' | 'memoryKb' | 'hashMemMultiplier' | 'sessions'>
+> & {
+	engine: Engine;
+} = {
+	kind: 'hash',
+	rows: 450_000,
+	width: 22,
+	memoryKb: DEFAULT_WORK_MEM_KB,
+	hashMemMultiplier: 2,
+	sessions: ASSUMED_SESSIONS,
+	engine: 'postgresql'
+};
+
+/** The panel's figures for one spilling operator of a reading; null: its plan doesn't hold the rows. */
+export function startSizing(reading: Reading, sizing: OperatorSizing): SizingInput | null {
+	if (reading.plan === null) return null;
+	const operator = findSizedOperator(reading.plan.root, sizing);
+	const rows = operator?.actualRows ?? operator?.estimatedRows ?? null;
+	if (operator === null || rows === null || rows <= 0) return null;
+	const { settings } = reading.plan;
+	const version = readMajorVersion(reading.engineVersion);
+	const multiplier =
+		Number(settings['hash_mem_multiplier'] ?? Number.NaN) || defaultHashMemMultiplier(version);
+	return {
+		kind: sizing.kind,
+		rows,
+		width: operator.width ?? EXAMPLE.width,
+		memoryKb: givenSettingKb(settings, sizing, multiplier),
+		hashMemMultiplier: multiplier,
+		engine: reading.engine,
+		...(reading.engineVersion === null ? {} : { engineVersion: reading.engineVersion }),
+		sessions: ASSUMED_SESSIONS
+	};
+}
+
+/** The operator whose rows fill the memory: of a hash join the side that is hashed. */
+function findSizedOperator(root: Operator, sizing: OperatorSizing): Operator | null {
+	for (const operator of walkOperators(root)) {
+		if (operator.path !== sizing.operator) continue;
+		if (operator.kind !== 'hash-join') return operator;
+		return operator.children.find((child) => child.kind === 'hash-build') ?? operator;
+	}
+	return null;
+}
+
+/** The setting as it stood, kB: as the plan prints it, else back from what the operator was given. */
+function givenSettingKb(
+	settings: Record<string, string>,
+	sizing: OperatorSizing,
+	multiplier: number
+): number {
+	const printed = settings[sizing.setting.name];
+	const printedKb = printed === undefined ? null : readMemoryKb(printed);
+	if (printedKb !== null && printedKb > 0) return printedKb;
+	if (sizing.givenKb === null) return DEFAULT_WORK_MEM_KB;
+	return sizing.kind === 'sort' ? sizing.givenKb : Math.round(sizing.givenKb / multiplier);
+}
