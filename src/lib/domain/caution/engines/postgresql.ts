@@ -246,7 +246,7 @@ export const POSTGRES_RULES = {
 		undo: 'Nothing to undo.',
 		load: 'Rewrites many pages in place: heavy WAL and replica lag.',
 		precheck: ['replicas', 'old-transactions'],
-		section: 'SQL commands, VACUUM; 24.1 Routine Vacuuming'
+		section: 'SQL commands, VACUUM; Routine Vacuuming'
 	}),
 	'vacuum-full': rule({
 		locks: [['AccessExclusiveLock', 'table']],
@@ -599,7 +599,7 @@ export const POSTGRES_RULES = {
 		undo: 'ALTER SYSTEM RESET {setting}; then select pg_reload_conf();',
 		load: 'Nothing happens before pg_reload_conf() or a restart; then it reaches running sessions too, unless they have a value of their own.',
 		precheck: ['setting-source', 'memory-exposure'],
-		section: 'SQL commands, ALTER SYSTEM; 20.1 Setting Parameters'
+		section: 'SQL commands, ALTER SYSTEM; Setting Parameters'
 	}),
 	'reload-configuration': rule({
 		level: 2,
@@ -607,7 +607,7 @@ export const POSTGRES_RULES = {
 		undo: 'Put the old values back and reload again.',
 		load: 'Every running session takes the changed settings at its next command, unless it has a value of its own.',
 		precheck: ['setting-source'],
-		section: '9.28 System Administration Functions; 20.1 Setting Parameters'
+		section: 'System Administration Functions; Setting Parameters'
 	}),
 	'alter-role-set': rule({
 		level: 2,
@@ -629,7 +629,7 @@ export const POSTGRES_RULES = {
 		undo: 'Cannot be undone; the other session can run its statement again.',
 		load: 'The other session loses its running statement; true means that the signal was sent, not that it stopped. Sessions idle in a transaction ignore it.',
 		precheck: ['right-backend'],
-		section: '9.28 System Administration Functions'
+		section: 'System Administration Functions'
 	}),
 	'terminate-backend': rule({
 		level: 3,
@@ -637,7 +637,7 @@ export const POSTGRES_RULES = {
 		undo: 'Cannot be undone: the session is gone and its transaction rolled back; its client has to connect again.',
 		load: 'The other client sees an error. Never kill -9 instead: the whole server would restart.',
 		precheck: ['right-backend'],
-		section: '9.28 System Administration Functions'
+		section: 'System Administration Functions'
 	}),
 	'reset-statistics': rule({
 		level: 3,
@@ -645,7 +645,7 @@ export const POSTGRES_RULES = {
 		undo: 'Cannot be undone: the counters are gone.',
 		load: 'Evidence of the incident is lost, and autovacuum forgets what it counted.',
 		precheck: ['save-counters'],
-		section: '27.2 The Cumulative Statistics System'
+		section: 'The Cumulative Statistics System'
 	}),
 	checkpoint: rule({
 		level: 2,
