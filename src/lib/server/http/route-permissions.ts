@@ -24,12 +24,18 @@ export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
 	// Draws the error of a page that a role doesn't open; says nothing of any other page.
 	'/(app)/refused': { GET: 'account.own' },
 	'/(app)/gauge': { GET: 'reading.make', POST: 'reading.make' },
+	'/(app)/incidents': { GET: 'incident.read' },
+	'/(app)/incidents/[number]': { GET: 'incident.read', POST: 'incident.write' },
+	'/(app)/incidents/[number]/evidence': { POST: 'evidence.write' },
+	'/(app)/incidents/new': { GET: 'incident.write' },
+	'/(app)/incidents/new/submit': { POST: 'incident.write' },
 	'/(app)/runbooks': { GET: 'runbook.read' },
 	'/(app)/runbooks/[slug]': { GET: 'runbook.read', actions: { start: 'attempt.write' } },
 	'/(app)/runbooks/[slug]/follow': { GET: 'attempt.read', POST: 'attempt.write' },
 	'/(app)/search': { GET: 'search.read' },
 	'/(app)/symptoms': { GET: 'symptom.read' },
 	'/(app)/symptoms/[id]': { GET: 'symptom.read' },
+	'/(app)/theme': { POST: 'account.own' },
 
 	'/api/v1/health': { GET: 'open' },
 	'/api/v1/sizing': { POST: 'reading.make' },
