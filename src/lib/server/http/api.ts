@@ -38,7 +38,7 @@ async function readText(request: Request): Promise<Outcome<string>> {
 }
 
 /** Parses JSON; a syntax error becomes `invalid` with the engine's own position. */
-function parseJson(text: string): Outcome<unknown> {
+export function parseJson(text: string): Outcome<unknown> {
 	try {
 		return ok(JSON.parse(text));
 	} catch (error) {

@@ -37,7 +37,19 @@ export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
 	'/(app)/symptoms/[id]': { GET: 'symptom.read' },
 	'/(app)/theme': { POST: 'account.own' },
 
+	'/api/v1/evidence': { POST: 'evidence.write' },
+	'/api/v1/evidence/[sha256]': { GET: 'evidence.read' },
 	'/api/v1/health': { GET: 'open' },
+	'/api/v1/incidents': { GET: 'incident.read', POST: 'incident.write' },
+	'/api/v1/incidents/[number]': { GET: 'incident.read', PATCH: 'incident.write' },
+	'/api/v1/incidents/[number]/attempts': { GET: 'attempt.read', POST: 'attempt.write' },
+	'/api/v1/incidents/[number]/attempts/[id]': { GET: 'attempt.read', PATCH: 'attempt.write' },
+	'/api/v1/incidents/[number]/entries': { GET: 'entry.read', POST: 'entry.write' },
+	'/api/v1/incidents/[number]/entries/[id]': { GET: 'entry.read', PATCH: 'entry.write' },
+	'/api/v1/incidents/[number]/evidence': { POST: 'evidence.write' },
+	'/api/v1/incidents/[number]/evidence/[id]': { DELETE: 'evidence.remove' },
+	'/api/v1/openapi.json': { GET: 'open' },
+	'/api/v1/readings': { POST: 'reading.make' },
 	'/api/v1/sizing': { POST: 'reading.make' },
 	'/api/v1/watch': { GET: 'watch.read' }
 };

@@ -118,6 +118,11 @@ export async function updateIncident(
 	await IncidentModel.update(changes, { where: { number }, transaction });
 }
 
+/** Notes that something of the incident changed, though none of its own fields did. */
+export async function touchIncident(number: number, now: string, transaction: Transaction): Promise<void> {
+	await IncidentModel.update({ updatedAt: now }, { where: { number }, transaction });
+}
+
 /** Keeps what an edit replaced. */
 export async function keepRevision(
 	kept: { number: number; revision: number; changedById: number | null; changedAt: string; before: object },

@@ -1,6 +1,6 @@
 import type { IncidentFilter } from '$lib/domain/incident/incident-filter';
 import type { Actor } from '$lib/domain/person/person';
-import { findWords, termsOf } from '$lib/domain/precedent/tokens';
+import { findWords, stemsOf } from '$lib/domain/precedent/tokens';
 import { allOf } from '$lib/domain/search/match-expression';
 import { parseQuery, type SearchQuery } from '$lib/domain/search/parse-query';
 import type { ListFilter } from './incident-list-store';
@@ -11,12 +11,12 @@ function toMatch(query: SearchQuery): string | null {
 	const beginning = last === undefined ? undefined : [...findWords(last)].at(-1)?.text;
 	const finished = last === undefined ? [] : query.words.slice(0, -1);
 	return allOf({
-		phrases: [...finished, ...query.phrases].map(termsOf),
+		phrases: [...finished, ...query.phrases].map(stemsOf),
 		unfinished:
 			last === undefined || beginning === undefined
 				? null
-				: { stem: termsOf(last)[0] ?? beginning, beginning },
-		excluded: query.excluded.map(termsOf)
+				: { stem: stemsOf(last)[0] ?? beginning, beginning },
+		excluded: query.excluded.map(stemsOf)
 	});
 }
 

@@ -1,0 +1,31 @@
+import { pageQuery } from '$lib/domain/incident/incident-filter';
+import { entryInput } from '$lib/domain/incident/incident-input';
+import { respondMade, respondPage } from '$lib/server/api/answers';
+import { readNumber } from '$lib/server/api/params';
+import { readJson, readQuery } from '$lib/server/http/api';
+import { requireActor } from '$lib/server/http/guard';
+import { idempotent } from '$lib/server/http/idempotent';
+import { respond } from '$lib/server/http/respond';
+import * as entries from '$lib/server/incidents/entries-service';
+import type { RequestHandler } from './$types';
+
+export const GET = (async (event) => {
+	const actor = requireActor(event);
+	const number = readNumber(event.params.number);
+	if (!number.ok) return respond(number);
+	const query = readQuery(event.url, pageQuery);
+	return query.ok ? respondPage(event, await entries.list(actor, number.value, query.value)) : respond(query);
+}) satisfies RequestHandler;
+
+export const POST = ((event) =>
+	idempotent(event, async (event) => {
+		const actor = requireActor(event);
+		const number = readNumber(event.params.number);
+		if (!number.ok) return respond(number);
+		const input = await readJson(event, entryInput);
+		if (!input.ok) return respond(input);
+		return respondMade(
+			await entries.add(actor, number.value, input.value),
+			({ id }) => `/api/v1/incidents/${number.value}/entries/${id}`
+		);
+	})) satisfies RequestHandler;
