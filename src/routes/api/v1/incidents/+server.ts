@@ -3,7 +3,7 @@ import { respondMade, respondPage } from '$lib/server/api/answers';
 import { receiveIncident } from '$lib/server/api/receive-incident';
 import { readQuery } from '$lib/server/http/api';
 import { requireActor } from '$lib/server/http/guard';
-import { idempotent } from '$lib/server/http/idempotent';
+import { idempotent } from '$lib/server/http/idempotency';
 import { respond } from '$lib/server/http/respond';
 import * as incidents from '$lib/server/incidents/incidents-service';
 import type { RequestHandler } from './$types';
@@ -15,7 +15,7 @@ export const GET = (async (event) => {
 }) satisfies RequestHandler;
 
 export const POST = ((event) =>
-	idempotent(event, async (event) => {
+	idempotent(event, async () => {
 		const actor = requireActor(event);
 		const received = await receiveIncident(event);
 		if (!received.ok) return respond(received);

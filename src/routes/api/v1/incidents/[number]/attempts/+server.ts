@@ -4,7 +4,7 @@ import { respondMade, respondPage } from '$lib/server/api/answers';
 import { readNumber } from '$lib/server/api/params';
 import { readJson, readQuery } from '$lib/server/http/api';
 import { requireActor } from '$lib/server/http/guard';
-import { idempotent } from '$lib/server/http/idempotent';
+import { idempotent } from '$lib/server/http/idempotency';
 import { respond } from '$lib/server/http/respond';
 import * as attempts from '$lib/server/incidents/attempts-service';
 import type { RequestHandler } from './$types';
@@ -20,7 +20,7 @@ export const GET = (async (event) => {
 }) satisfies RequestHandler;
 
 export const POST = ((event) =>
-	idempotent(event, async (event) => {
+	idempotent(event, async () => {
 		const actor = requireActor(event);
 		const number = readNumber(event.params.number);
 		if (!number.ok) return respond(number);
