@@ -87,5 +87,3 @@ export function requireIfMatch(event: Pick<RequestEvent, 'request'>): Outcome<nu
 	if (revision === undefined) return fail('stale', `If-Match ${header} is no revision of this thing.`);
 	return ok(Number(revision));
 }
-
-export { idempotent } from './idempotency';
