@@ -1,4 +1,5 @@
-import type { Operator, OperatorKind } from '$lib/domain/reading/operator';
+import type { Operator } from '$lib/domain/reading/operator';
+import { phraseOperator } from '$lib/domain/reading/operator-phrase';
 
 /** An operator in words: what it is, and what tells it from others of its kind. */
 export interface OperatorWords {
@@ -8,45 +9,19 @@ export interface OperatorWords {
 	how: string | null;
 }
 
-/** Kinds that read something: "scan of …". The others stand alone and take their condition with "on" or "by". */
-const READS: Partial<Record<OperatorKind, string>> = {
-	'seq-scan': 'scan of',
-	'index-scan': 'index scan of',
-	'index-only-scan': 'index-only scan of',
-	'bitmap-scan': 'bitmap scan of',
-	'bitmap-index': 'bitmap index scan of',
-	lookup: 'lookup in',
-	'cte-scan': 'scan of',
-	'function-scan': 'rows of',
-	modify: 'change of'
-};
-const ON: readonly OperatorKind[] = ['hash-join', 'merge-join', 'nested-loop'];
-const BY: readonly OperatorKind[] = [
-	'sort',
-	'incremental-sort',
-	'hash-aggregate',
-	'group-aggregate',
-	'window',
-	'unique'
-];
-
-/** Names an operator for the trail, the ledger and the figures beside it. */
+/** Names an operator for the ledger and the figures beside it, in the words of the trail's sentence. */
 export function nameOperator(operator: Operator): OperatorWords {
-	const reads = READS[operator.kind];
-	const plain = operator.kind === 'other' ? operator.name.toLowerCase() : operator.kind.replaceAll('-', ' ');
+	const phrase = phraseOperator(operator);
+	const kind = operator.kind.replaceAll('-', ' ');
+	// "hash join on invoice_no": the phrase holds the condition, cut to what tells.
+	if (phrase.startsWith(`${kind} `) && operator.relation === null)
+		return { what: kind, how: phrase.slice(kind.length + 1) };
 	const what =
-		reads !== undefined && operator.relation !== null
-			? `${reads} ${operator.relation}`
-			: operator.relation !== null
-				? `${plain} ${operator.relation}`
-				: reads !== undefined
-					? operator.name.toLowerCase()
-					: plain;
-	if (operator.condition === null || operator.condition === '') return { what, how: null };
-	const condition = trimBrackets(operator.condition);
-	if (ON.includes(operator.kind)) return { what, how: `on ${condition}` };
-	if (BY.includes(operator.kind)) return { what, how: `by ${condition}` };
-	return { what, how: condition };
+		operator.relation === null || phrase.includes(operator.relation)
+			? phrase
+			: `${phrase} on ${operator.relation}`;
+	const condition = operator.condition === null ? '' : trimBrackets(operator.condition);
+	return { what, how: condition === '' || phrase.includes(condition) ? null : condition };
 }
 
 /** Takes off a pair of brackets that embraces the whole condition: "(a = b)" → "a = b". */

@@ -1,7 +1,7 @@
 import type { Operator } from '$lib/domain/reading/operator';
+import { phraseOperator } from '$lib/domain/reading/operator-phrase';
 import type { Reading } from '$lib/domain/reading/reading';
 import { formatBytes, formatRows } from '$lib/domain/sizing/units';
-import { nameOperator } from './operator-words';
 
 /** The one sentence that a reading answers with, before any figure: its trail, its heaviest symptom, or that all is well. */
 export function sayWhatOverflows(reading: Reading): string {
@@ -24,8 +24,6 @@ export function wordsToMark(reading: Reading, operators: ReadonlyMap<string, Ope
 	const paths = [trail.steps[0]?.operator, trail.overflow ?? trail.steps.at(-1)?.operator];
 	return paths.flatMap((path) => {
 		const operator = path === undefined ? undefined : operators.get(path);
-		if (operator === undefined) return [];
-		const { what, how } = nameOperator(operator);
-		return how === null ? [what] : [`${what} ${how}`, what];
+		return operator === undefined ? [] : [phraseOperator(operator)];
 	});
 }
