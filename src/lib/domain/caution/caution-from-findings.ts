@@ -1,11 +1,5 @@
 import type { Caution, CautionLevel } from './caution';
-import {
-	POSTGRES_CHECKS,
-	POSTGRES_RULES,
-	type PostgresCheck,
-	type PostgresRule,
-	type PostgresThing
-} from './engines/postgresql';
+import { POSTGRES_CHECKS, POSTGRES_RULES, type PostgresRule, type PostgresThing } from './engines/postgresql';
 import type { Finding } from './engines/postgresql-tree';
 import { blocksOf, strengthOf, type LockMode } from './lock-modes';
 
@@ -47,9 +41,7 @@ export function toCaution(sql: string, findings: readonly Finding[]): Caution {
 		cancel: joinTexts(ordered, (finding) => ruleOf(finding).cancel),
 		undo: joinTexts(ordered, (finding) => ruleOf(finding).undo),
 		load: joinTexts(ordered, (finding) => [finding.note, ruleOf(finding).load].filter(Boolean).join(' ')),
-		precheck: unique(
-			ordered.flatMap((finding) => ruleOf(finding).precheck.map((check) => checkText(check, finding)))
-		),
+		precheck: unique(ordered.flatMap(checksOf)),
 		basis: firstRule === undefined ? null : { source: 'PostgreSQL manual', section: firstRule.section }
 	};
 }
@@ -112,8 +104,15 @@ function joinTexts(findings: readonly Finding[], text: (finding: Finding) => str
 	return unique(findings.map((finding) => fill(text(finding), finding))).join(' ');
 }
 
-function checkText(check: PostgresCheck, finding: Finding): string {
-	return fill(POSTGRES_CHECKS[check], finding);
+/** Settings that take memory, times sessions and operators. */
+const MEMORY_SETTING = /mem|buffers|workers|connections/;
+
+function checksOf(finding: Finding): string[] {
+	const setting = finding.words?.setting;
+	const takesMemory = setting === undefined || MEMORY_SETTING.test(setting);
+	return ruleOf(finding)
+		.precheck.filter((check) => check !== 'memory-exposure' || takesMemory)
+		.map((check) => fill(POSTGRES_CHECKS[check], finding));
 }
 
 /** Puts the statement's own names into a text of the table. */
