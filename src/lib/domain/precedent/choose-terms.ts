@@ -14,9 +14,15 @@ export const DOCUMENTS_BUDGET = 60_000;
 /** A word in more than this part of all documents tells nothing apart; ideas are exempt. */
 const TOO_COMMON = 0.5;
 
-/** The terms to ask for, rarest first, with what each is worth. */
+/** How many times an idea is asked for: it counts that many times in BM25. Useful 1..2. */
+const IDEAS_COUNT = 2;
+
+/** The terms to ask for, rarest first, with what they are worth. */
 export interface ChosenTerms {
+	/** Each once. */
 	terms: string[];
+	/** As they are asked for: an idea as often as it counts. */
+	asked: string[];
 	/** Sum of the terms' inverse document frequencies: what BM25 of the best text comes near to. */
 	weight: number;
 }
@@ -49,13 +55,15 @@ export function chooseTerms(
 		...trade.slice(0, MOST_TRADE_WORDS),
 		...known.filter(({ term }) => isIdea(term))
 	].sort((one, other) => one.holders - other.holders);
-	const chosen: ChosenTerms = { terms: [], weight: 0 };
+	const chosen: ChosenTerms = { terms: [], asked: [], weight: 0 };
 	let led = 0;
 	for (const { term, holders } of wanted) {
 		led += holders;
 		if (led > DOCUMENTS_BUDGET && chosen.terms.length > 0) break;
+		const times = isIdea(term) ? IDEAS_COUNT : 1;
 		chosen.terms.push(term);
-		chosen.weight += Math.max(0, Math.log((documents - holders + 0.5) / (holders + 0.5)));
+		chosen.asked.push(...Array<string>(times).fill(term));
+		chosen.weight += times * Math.max(0, Math.log((documents - holders + 0.5) / (holders + 0.5)));
 	}
 	return chosen;
 }

@@ -26,6 +26,16 @@ export interface ProfileFields {
 	cause: string | null;
 }
 
+/** The profile of an incident without readings. */
+export const NO_EVIDENCE: EvidenceProfile = {
+	symptoms: [],
+	causes: [],
+	fingerprints: [],
+	relations: [],
+	shapes: [],
+	traits: []
+};
+
 /** The profile of an incident: what its evidence shows, and where it happened. */
 export function profileOf(fields: ProfileFields, evidence: EvidenceProfile): PrecedentProfile {
 	return {

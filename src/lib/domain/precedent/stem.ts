@@ -48,7 +48,7 @@ function cutVerb(word: string, length: number): string {
 
 /** "cache" and "caching" meet at "cach". */
 function cutSilentE(word: string): string {
-	return word.length > SHORTEST_TO_CUT && word.endsWith('e') && !word.endsWith('ee')
+	return word.length >= SHORTEST_TO_CUT && word.endsWith('e') && !word.endsWith('ee')
 		? word.slice(0, -1)
 		: word;
 }

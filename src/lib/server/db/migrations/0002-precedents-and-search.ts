@@ -10,7 +10,7 @@ const TOKENS = `content='', contentless_delete=1, tokenize="ascii tokenchars '_.
 const UP = [
 	`CREATE VIRTUAL TABLE incidentText USING fts5(title, narrative, resolution, entries, evidence, ideas, ${TOKENS})`,
 	// What one hit counts in each column, in their order.
-	`INSERT INTO incidentText(incidentText, rank) VALUES ('rank', 'bm25(2.0, 1.0, 1.0, 0.5, 0.5, 6.0)')`,
+	`INSERT INTO incidentText(incidentText, rank) VALUES ('rank', 'bm25(2.0, 1.0, 1.0, 0.5, 0.2, 12.0)')`,
 	'CREATE VIRTUAL TABLE incidentTerms USING fts5vocab(incidentText, row)',
 	`CREATE VIRTUAL TABLE runbookText USING fts5(title, summary, body, ${TOKENS})`,
 	`INSERT INTO runbookText(runbookText, rank) VALUES ('rank', 'bm25(4.0, 2.0, 1.0)')`,

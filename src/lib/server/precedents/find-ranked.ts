@@ -1,0 +1,89 @@
+import { chooseTerms, listTerms } from '$lib/domain/precedent/choose-terms';
+import { ANY_EVIDENCE, featuresOf, rarityFrom } from '$lib/domain/precedent/features';
+import type { Candidate, RankedPrecedent, Rarity } from '$lib/domain/precedent/precedent';
+import { NO_EVIDENCE, profileOf } from '$lib/domain/precedent/profile';
+import { rankPrecedents, type RankOptions } from '$lib/domain/precedent/rank';
+import { anyOf } from '$lib/domain/search/match-expression';
+import { LONGEST_TEXT } from '$lib/domain/search/index-text';
+import * as store from './candidate-store';
+import type { Asked } from './asked';
+import { countsOf } from './term-counts';
+
+/** Candidates that words and evidence each bring in: several times what is ever shown. */
+const MOST_BY_WORDS = 150;
+const MOST_BY_EVIDENCE = 150;
+/** The sum of incidents that features may lead to; the rarest come first. */
+const INCIDENTS_BUDGET = 40_000;
+
+/** Ranked precedents with what is needed to describe them. */
+export interface Found {
+	ranked: RankedPrecedent[];
+	rows: ReadonlyMap<number, store.CandidateRow>;
+	/** The terms asked for, rarest first. */
+	terms: string[];
+	rarity: Rarity;
+}
+
+/**
+ * Finds the candidates for what is asked (those with the best words, and those that share the rarest evidence)
+ * and ranks them. Weights other than the usual ones are for the bench.
+ */
+export async function findRanked(
+	asked: Asked,
+	limit: number,
+	weights?: RankOptions['weights']
+): Promise<Found> {
+	const [words, evidence] = await Promise.all([findByWords(asked), findByEvidence(asked)]);
+	const numbers = new Set([...words.bm25.keys(), ...evidence.numbers]);
+	if (asked.number !== null) numbers.delete(asked.number);
+	const rows = await store.readCandidates([...numbers]);
+	const candidates = rows.map((row) => toCandidate(row, words.bm25.get(row.number) ?? null));
+	const ranked = rankPrecedents(
+		{ profile: asked.profile, bestBm25: words.weight },
+		candidates,
+		evidence.rarity,
+		weights === undefined ? { limit } : { limit, weights }
+	);
+	return {
+		ranked,
+		rows: new Map(rows.map((row) => [row.number, row])),
+		terms: words.terms,
+		rarity: evidence.rarity
+	};
+}
+
+async function findByWords({
+	number,
+	text
+}: Asked): Promise<{ terms: string[]; weight: number; bm25: ReadonlyMap<number, number> }> {
+	const terms = listTerms(text.slice(0, LONGEST_TEXT));
+	const counts = await countsOf(terms);
+	// A logged incident holds all of its own terms; they are worth asking for where another one does too.
+	const own = number === null ? 0 : 1;
+	const chosen = chooseTerms(terms, (term) => counts.of(term) - own, counts.documents);
+	const expression = anyOf(chosen.asked);
+	const matches = expression === null ? [] : await store.matchWords(expression, MOST_BY_WORDS);
+	return { ...chosen, bm25: new Map(matches.map(({ number, bm25 }) => [number, bm25])) };
+}
+
+async function findByEvidence({ profile }: Asked): Promise<{ numbers: number[]; rarity: Rarity }> {
+	const features = featuresOf(profile);
+	const counts = await store.countFeatures([ANY_EVIDENCE, ...features]);
+	const rarity = rarityFrom(counts, counts.get(ANY_EVIDENCE) ?? 0);
+	const known = features
+		.filter((feature) => feature !== ANY_EVIDENCE && counts.has(feature))
+		.map((feature) => ({ feature, weight: rarity(feature), incidents: counts.get(feature) ?? 0 }))
+		.sort((one, other) => one.incidents - other.incidents);
+	let led = 0;
+	const wanted = known.filter(
+		({ incidents }, index) => (led += incidents) <= INCIDENTS_BUDGET || index === 0
+	);
+	return { numbers: await store.matchFeatures(wanted, MOST_BY_EVIDENCE), rarity };
+}
+
+function toCandidate(row: store.CandidateRow, bm25: number | null): Candidate {
+	const profile = profileOf({ ...row, text: `${row.title}\n${row.opening}` }, row.evidence ?? NO_EVIDENCE);
+	const hasOutcome =
+		(row.state === 'resolved' || row.state === 'reviewed') && (row.resolution ?? '').trim() !== '';
+	return { number: row.number, profile, bm25, hasOutcome, verdict: null };
+}
