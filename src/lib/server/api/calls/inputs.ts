@@ -1,0 +1,21 @@
+import type { z } from 'zod';
+import {
+	attemptInput,
+	attemptPatch,
+	entryInput,
+	entryPatch,
+	incidentInput,
+	incidentPatch
+} from '$lib/domain/incident/incident-input';
+import { sizingInput } from '$lib/domain/sizing/sizing';
+
+/** What clients send, each named once in the document. */
+export const INPUTS: ReadonlyMap<string, z.ZodType> = new Map<string, z.ZodType>([
+	['IncidentInput', incidentInput],
+	['IncidentPatch', incidentPatch],
+	['EntryInput', entryInput],
+	['EntryPatch', entryPatch],
+	['AttemptInput', attemptInput],
+	['AttemptPatch', attemptPatch],
+	['SizingInput', sizingInput]
+]);
