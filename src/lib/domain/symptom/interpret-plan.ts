@@ -1,9 +1,18 @@
 import type { Cause, OperatorSizing, Plan, Spills, Symptom, Trail } from '../reading/reading';
+import { findSymptoms } from './find-symptoms';
+import { toPlanTree } from './plan-tree';
 
-/** Symptoms, trails, causes and sizing of one plan. */
-export function interpretPlan(
-	_plan: Plan,
-	_spills: Spills | null
-): { symptoms: Symptom[]; trails: Trail[]; causes: Cause[]; sizing: OperatorSizing[] } {
-	return { symptoms: [], trails: [], causes: [], sizing: [] };
+/** What one plan shows: its symptoms, heaviest first; the trails of its misestimates; likely causes; what its spills would have needed. */
+export interface Interpretation {
+	symptoms: Symptom[];
+	trails: Trail[];
+	causes: Cause[];
+	sizing: OperatorSizing[];
+}
+
+/** Interprets one plan. Pure: the same plan gives the same answer. */
+export function interpretPlan(plan: Plan, spills: Spills | null): Interpretation {
+	const tree = toPlanTree(plan.root);
+	const symptoms = findSymptoms({ plan, tree, spills });
+	return { symptoms, trails: [], causes: [], sizing: [] };
 }

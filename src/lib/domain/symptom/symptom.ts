@@ -1,4 +1,5 @@
 import type { Plan, Spills, Symptom } from '../reading/reading';
+import type { PlanTree } from './plan-tree';
 
 export const SYMPTOM_IDS = [
 	'row-underestimate',
@@ -58,6 +59,8 @@ export type CauseId = (typeof CAUSE_IDS)[number];
 /** What a rule may look at. */
 export interface RuleInput {
 	plan: Plan;
+	/** The plan's operators with their place in it. */
+	tree: PlanTree;
 	spills: Spills | null;
 }
 
