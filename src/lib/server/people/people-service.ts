@@ -4,10 +4,12 @@ import type { Actor, Person, Role } from '$lib/domain/person/person';
 import type { PasswordChangeInput, PersonInput, SignInInput } from '$lib/domain/person/person-input';
 import { fail, ok, type Outcome } from '$lib/domain/problem';
 import * as audit from '../audit/audit-service';
+import { config, isLoopback } from '../config';
 import { write } from '../db/transaction';
 import { hashSecret, makeSecret } from '../secrets';
 import { deleteSessionsOf } from '../sessions/session-store';
 import { revokeTokensOf } from '../sessions/token-store';
+import { DEMO_PASSWORD } from './demo-password';
 import { hashPassword, verifyPassword } from './password';
 import * as store from './people-store';
 import { countSignIn, forgetSignIn } from './sign-in-limits';
@@ -45,13 +47,25 @@ export async function signIn(input: SignInInput & { address: string }): Promise<
 	const counted = await countSignIn(input.email, input.address);
 	if (!counted.ok) return counted;
 	const person = await store.findByEmail(input.email);
-	const usableHash = person && person.deactivatedAt === null ? person.passwordHash : null;
+	const isOpen = person?.deactivatedAt === null && !isShutDemo(input.password);
+	const usableHash = isOpen ? person.passwordHash : null;
 	const fits = await verifyPassword(usableHash, input.password);
 	if (!person || !fits) {
 		return fail('unauthenticated', 'This address and this password do not belong together.');
 	}
 	await forgetSignIn(input.email, input.address);
 	return ok({ id: person.id, name: person.name });
+}
+
+/** The demonstration's printed password opens only on the machine itself. */
+function isShutDemo(password: string): boolean {
+	return password === DEMO_PASSWORD && !isLoopback(config().host);
+}
+
+/** What is wrong with a new password; null where it will do. */
+function findFault(password: string, person: { name: string; email: string }): string | null {
+	if (password === DEMO_PASSWORD) return 'This is the password of the demonstration, known to all.';
+	return findPasswordFault(password, person);
 }
 
 async function putLink(actor: Actor, person: Person, action: string): Promise<string> {
@@ -102,6 +116,13 @@ export async function renewLink(
 	return ok({ person: toDetail(person), linkToken: await putLink(actor, person, 'person.link') });
 }
 
+/** The person of an address, for whoever manages people. */
+export async function find(actor: Actor, email: string): Promise<Outcome<PersonDetail>> {
+	if (!can(actor, 'people.manage')) return NOT_ALLOWED;
+	const person = await store.findByEmail(email.trim().toLowerCase());
+	return person ? ok(toDetail(person)) : fail('not_found', `Nobody here has the address ${email}.`);
+}
+
 /** Whose link a secret is; changes nothing. Not found where it was used, has run out or never was. */
 export async function readLink(linkToken: string): Promise<Outcome<{ name: string; email: string }>> {
 	const owner = await store.findLinkOwner(hashSecret(linkToken), new Date().toISOString());
@@ -124,7 +145,7 @@ export async function setPasswordByLink(linkToken: string, password: string): Pr
 	const now = new Date().toISOString();
 	const owner = await store.findLinkOwner(tokenHash, now);
 	if (!owner) return UNKNOWN_LINK;
-	const fault = findPasswordFault(password, owner);
+	const fault = findFault(password, owner);
 	if (fault) return fail('invalid', fault, { errors: [{ field: 'password', message: fault }] });
 	const actor: Actor = {
 		personId: owner.id,
@@ -160,7 +181,7 @@ export async function changePassword(
 		return fail('invalid', message, { errors: [{ field: 'current', message }] });
 	}
 	await forgetSignIn(person.email, input.address);
-	const fault = findPasswordFault(input.password, person);
+	const fault = findFault(input.password, person);
 	if (fault) return fail('invalid', fault, { errors: [{ field: 'password', message: fault }] });
 	await replacePassword(actor, person.id, input.password);
 	return ok(null);
@@ -177,6 +198,20 @@ export async function readSelf(actor: Actor): Promise<Outcome<PersonDetail>> {
 export async function list(actor: Actor): Promise<Outcome<PersonDetail[]>> {
 	if (!can(actor, 'people.manage')) return NOT_ALLOWED;
 	return ok((await store.listAll()).map(toDetail));
+}
+
+/** Who may be on an incident: everybody who may sign in and whose role lets them write. Names and ids only. */
+export async function listResponders(actor: Actor): Promise<Outcome<Person[]>> {
+	if (!can(actor, 'incident.write')) return NOT_ALLOWED;
+	const people = await store.listAll();
+	return ok(
+		people
+			.filter((person) => person.deactivatedAt === null)
+			.filter(({ id, name, role }) =>
+				can({ personId: id, name, role, via: 'session', tokenId: null }, 'incident.write')
+			)
+			.map(({ id, name }) => ({ id, name }))
+	);
 }
 
 /** Closes a person's account: sessions and tokens end in the same transaction. What they wrote stays. */
