@@ -1,0 +1,24 @@
+import { wordOf } from '$lib/components/reading/operator-words';
+import type { IncidentState, Severity } from '$lib/domain/incident/incident';
+import { CAUSE_IDS } from '$lib/domain/symptom/symptom';
+
+/** What a severity means to those who wait. */
+export const SEVERITY_WORDS: Record<Severity, string> = {
+	1: 'business stands still',
+	2: 'hurts now',
+	3: 'slower',
+	4: 'noticed'
+};
+
+/** A move as a verb for its button. */
+export const MOVE_VERBS: Record<IncidentState, string> = {
+	open: 'It came back',
+	contained: 'Contained',
+	resolved: 'Resolved',
+	reviewed: 'Reviewed'
+};
+
+/** A cause as words: an id of the catalogue, or the text that somebody wrote. */
+export function writeCause(cause: string): string {
+	return CAUSE_IDS.some((id) => id === cause) ? wordOf(cause) : cause;
+}
