@@ -1,16 +1,26 @@
-/**
- * Text of bytes in the encodings that pasted evidence arrives in: UTF-8, UTF-16 with or without its mark, else
- * Latin-1 (which can hold any byte). The byte order mark is taken off, line ends become `\n`.
- */
-export function decodeText(bytes: Uint8Array): string {
-	return decodeAs(encodingOf(bytes), bytes).replace(/\r\n?/g, '\n');
-}
-
+/** The encodings that pasted evidence arrives in; Latin-1 can hold any byte and is what is left. */
 export type Encoding = 'utf-8' | 'utf-16le' | 'utf-16be' | 'latin1';
 
-/** Decodes and takes off the byte order mark. */
+/** Decodes bytes and takes off the byte order mark. */
 export function decodeAs(encoding: Encoding, bytes: Uint8Array): string {
 	return new TextDecoder(encoding).decode(bytes);
+}
+
+/** Decodes a whole text that was pasted. */
+export function decodeText(bytes: Uint8Array): string {
+	return normalisePaste(decodeAs(encodingOf(bytes), bytes));
+}
+
+/** What word processors, chats and Windows put in the place of plain marks, put back; one character for one. */
+export function normalisePaste(text: string): string {
+	const plain = /[\u0080-\uffff]/.test(text)
+		? text
+				.replace(/[\u00a0\u2007\u202f\u3000]/g, ' ')
+				.replace(/[\u201c\u201d\u201e\u201f]/g, '"')
+				.replace(/[\u2018\u2019\u201a\u201b]/g, "'")
+				.replace(/[\u200b\u2060\ufeff]/g, '')
+		: text;
+	return plain.includes('\r') ? plain.replace(/\r\n?/g, '\n') : plain;
 }
 
 /** The encoding of a file, judged from its first bytes. */

@@ -1,4 +1,4 @@
-import type { Operator, OperatorKind } from './operator';
+import type { OperatorKind, PlanOperator } from './operator';
 
 /** Kinds that read something: "scan of invoice_line". */
 const READS: Partial<Record<OperatorKind, string>> = {
@@ -17,16 +17,21 @@ const JOINS: readonly OperatorKind[] = ['hash-join', 'merge-join', 'nested-loop'
 const LONGEST_CONDITION = 60;
 
 /** An operator in a few words for a sentence: "scan of invoice_line", "hash join on invoice_no", "sort by currency, charge_code". */
-export function phraseOperator(operator: Operator): string {
+export function phraseOperator(operator: PlanOperator): string {
 	const reads = READS[operator.kind];
 	if (reads !== undefined && operator.relation !== null) return `${reads} ${operator.relation}`;
+	const { indexName } = operator.facts;
+	if (operator.kind === 'bitmap-index' && indexName !== null) return `bitmap scan of index ${indexName}`;
+	if (operator.kind === 'subquery' && operator.alias !== null) return `subquery ${operator.alias}`;
+	const [input] = operator.children;
+	if (operator.kind === 'materialize' && input !== undefined) return `stored ${phraseOperator(input)}`;
 	const what = operator.kind === 'other' ? operator.name.toLowerCase() : operator.kind.replaceAll('-', ' ');
 	const condition = shortCondition(operator);
 	if (condition === null) return what;
 	return `${what} ${JOINS.includes(operator.kind) ? 'on' : 'by'} ${condition}`;
 }
 
-function shortCondition(operator: Operator): string | null {
+function shortCondition(operator: PlanOperator): string | null {
 	const { kind, condition } = operator;
 	if (condition === null || condition === '') return null;
 	if (JOINS.includes(kind)) return sharedColumn(condition) ?? shorten(withoutBrackets(condition));

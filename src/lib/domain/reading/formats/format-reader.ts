@@ -28,3 +28,15 @@ export function positionAt(text: string, offset: number): { line: number; column
 	}
 	return { line, column: offset - start + 1 };
 }
+
+/** A format that is read as it comes in, so that its files may be of any length. */
+export interface StreamFormat {
+	format: Format;
+	engine: Engine;
+	kind: 'log';
+	recognise(head: string): boolean;
+	/** Takes text as it comes, gives back whole masked lines; `end` gives the rest. */
+	openMasker(): { push(text: string): string; end(): string };
+	/** Takes whole masked lines. */
+	openReader(): { push(text: string): void; finish(): FormatResult };
+}

@@ -1,3 +1,4 @@
+import { maskJsonPlan } from '../masking/mask-json-plan';
 import { BOUNDS } from '../bounds';
 import type { FormatResult, Plan, ReadingWarning } from '../reading';
 import { nothingRead, positionAt, type TextFormat } from './format-reader';
@@ -13,7 +14,7 @@ export const postgresJson: TextFormat = {
 	kind: 'plan',
 	recognise: (head) =>
 		/"Node Type"\s*:|"Plan"\s*:\s*\{[\s+]*"Node Type/.test(head) || /\\"Node Type\\"/.test(head),
-	mask: (text) => text,
+	mask: maskJsonPlan,
 	read: readPostgresJson
 };
 

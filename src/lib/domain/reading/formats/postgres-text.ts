@@ -1,3 +1,4 @@
+import { maskTextPlan } from '../masking/mask-text-plan';
 import type { FormatResult, ReadingWarning } from '../reading';
 import { nothingRead, type TextFormat } from './format-reader';
 import { TextPlanReader } from './explain-text/text-plan-reader';
@@ -14,7 +15,7 @@ export const postgresText: TextFormat = {
 		/^[\s>|]*->\s+(?:Parallel )?(?:Seq|Index|Bitmap|Hash|Sort|Nested|Merge|Materialize|Aggregate|CTE|Function|Result)\b/m.test(
 			head
 		),
-	mask: (text) => text,
+	mask: maskTextPlan,
 	read: readPostgresText
 };
 

@@ -46,7 +46,8 @@ function firstOfRun(lines: readonly string[], last: number): number {
 	return first;
 }
 
-function bareStatement(text: string): string | null {
+/** A statement without EXPLAIN and its options and without its closing semicolon; null where nothing is left. */
+export function bareStatement(text: string): string | null {
 	const sql = text
 		.replace(QUERY_TEXT, '')
 		.replace(

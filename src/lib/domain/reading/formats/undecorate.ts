@@ -3,11 +3,7 @@
  * every offset (and with it line and column of a warning) still holds.
  */
 export function blankDecoration(text: string): string {
-	const lines = text
-		.replace(/[\u00a0\u2007\u202f\u3000]/g, ' ')
-		.replace(/[\u201c\u201d\u201e\u201f]/g, '"')
-		.replace(/[\u2018\u2019\u201a\u201b]/g, "'")
-		.split('\n');
+	const lines = text.split('\n');
 	const filled = lines.filter((line) => line.trim() !== '').length;
 	const quoted = lines.filter((line) => QUOTE.test(line)).length > filled / 2;
 	const margin = lines.filter((line) => MARGIN.test(line)).length > filled / 3;

@@ -1,0 +1,80 @@
+/** An open bracket of the output. */
+interface Group {
+	/** Offset of the bracket in the output. */
+	start: number;
+	/** Where its first element ends; null before the first comma. */
+	firstEnd: number | null;
+	literals: number;
+	/** Holds nothing but literals so far. */
+	simple: boolean;
+	collapses: boolean;
+}
+
+/** A list of literals collapses behind these words, or behind no word at all: never as arguments of a function. */
+const BEFORE_LIST = new Set(['in', 'values', 'any', 'all', 'some', 'array']);
+
+/**
+ * The output of the masker. Lists of nothing but literals collapse to their first element, `IN (?, ?)` to `IN (?)`,
+ * and rows of VALUES that are like the one before go.
+ */
+export class LiteralLists {
+	text = '';
+	private readonly groups: Group[] = [];
+	/** The last row of VALUES: its depth, where it ends, and its text where it collapsed. */
+	private rows: { depth: number; end: number; text: string } | null = null;
+
+	append(text: string): void {
+		this.text += text;
+	}
+
+	open(named: boolean, word: string): void {
+		const depth = this.groups.length;
+		if (word === 'values') this.rows = { depth, end: -1, text: '' };
+		const collapses = !named || BEFORE_LIST.has(word);
+		this.groups.push({ start: this.text.length - 1, firstEnd: null, literals: 0, simple: true, collapses });
+	}
+
+	comma(): void {
+		const group = this.groups[this.groups.length - 1];
+		if (group !== undefined) group.firstEnd ??= this.text.trimEnd().length;
+		this.text += ',';
+	}
+
+	close(bracket: string): void {
+		const group = this.groups.pop();
+		if (group === undefined) {
+			this.text += bracket;
+			return;
+		}
+		if (group.simple && group.literals > 1 && group.collapses && group.firstEnd !== null) {
+			this.text = this.text.slice(0, group.firstEnd);
+		}
+		this.text += bracket;
+		const parent = this.groups[this.groups.length - 1];
+		if (parent !== undefined) {
+			if (!group.simple) parent.simple = false;
+			else if (group.literals > 0) parent.literals++;
+		}
+		if (this.rows?.depth === this.groups.length) this.closeRow(group, this.rows);
+	}
+
+	countLiteral(): void {
+		const group = this.groups[this.groups.length - 1];
+		if (group !== undefined) group.literals++;
+		else this.rows = null;
+	}
+
+	/** Something else than a literal came: the list stays as it is. */
+	spoil(word = ''): void {
+		const group = this.groups[this.groups.length - 1];
+		if (group !== undefined) group.simple = false;
+		if (this.rows !== null && this.groups.length <= this.rows.depth && word !== 'values') this.rows = null;
+	}
+
+	private closeRow(group: Group, last: { depth: number; end: number; text: string }): void {
+		const text = group.simple && group.literals > 0 ? this.text.slice(group.start) : '';
+		const between = last.end < 0 ? '' : this.text.slice(last.end, group.start).trim();
+		if (text !== '' && text === last.text && between === ',') this.text = this.text.slice(0, last.end);
+		else this.rows = { depth: last.depth, end: this.text.length, text };
+	}
+}
