@@ -90,7 +90,10 @@ function byServer(find: (asked: Asked) => ReturnType<typeof findRanked>): Ranker
 
 /** The same question, had nobody attached anything. */
 function withoutEvidence(asked: Asked): Asked {
-	return { ...asked, profile: profileOf({ ...asked.profile, text: asked.text, cause: null }, NO_EVIDENCE) };
+	return {
+		...asked,
+		profile: profileOf({ ...asked.profile, text: asked.text, cause: null, resolution: null }, NO_EVIDENCE)
+	};
 }
 
 async function run(

@@ -70,6 +70,8 @@ export interface PrecedentProfile extends EvidenceProfile {
 	engine: Engine | null;
 	database: string | null;
 	startedAt: string | null;
+	/** Causes that narrative or resolution name, or name the remedy of. */
+	toldCauses: CauseId[];
 	/** A cause that a person wrote down, where it is one of the catalogue's. */
 	confirmedCause: CauseId | null;
 }

@@ -1,7 +1,7 @@
 import type { OperatorKind } from '../reading/operator';
 import { walkOperators } from '../reading/operator';
 import type { Symptom, Trail } from '../reading/reading';
-import { findToldSymptoms } from './told-symptoms';
+import { findToldCauses, findToldSymptoms } from './told';
 import type { CauseId, SymptomId } from '../symptom/symptom';
 import { CAUSE_IDS } from '../symptom/symptom';
 import { readCourse, readMagnitude } from './figures';
@@ -24,6 +24,8 @@ export interface ProfileFields {
 	startedAt: string | null;
 	/** As written: an id of the catalogue or free text. */
 	cause: string | null;
+	/** What ended it; null: not known, or not to be looked at. */
+	resolution: string | null;
 }
 
 /** The profile of an incident without readings. */
@@ -41,6 +43,7 @@ export function profileOf(fields: ProfileFields, evidence: EvidenceProfile): Pre
 	return {
 		...evidence,
 		symptoms: addTold(evidence.symptoms, fields.text),
+		toldCauses: findToldCauses(`${fields.text}\n\n${fields.resolution ?? ''}`),
 		service: fields.service,
 		engine: fields.engine,
 		database: fields.database,

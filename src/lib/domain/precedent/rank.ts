@@ -6,7 +6,7 @@ import { compareStatements } from './parts/statement';
 import { compareSymptoms } from './parts/symptoms';
 import { compareByVerdict } from './parts/verdict';
 import { compareWords } from './parts/words';
-import { PART_WEIGHTS, REFUSED_KEEPS, TIE } from './weights';
+import { ONLY_TOLD_COUNTS, PART_WEIGHTS, REFUSED_KEEPS, TIE } from './weights';
 
 export interface RankOptions {
 	limit: number;
@@ -25,7 +25,7 @@ export function rankPrecedents(
 	rarity: Rarity,
 	options: RankOptions
 ): RankedPrecedent[] {
-	const weights = options.weights ?? PART_WEIGHTS;
+	const weights = weighParts(question, options.weights ?? PART_WEIGHTS);
 	const asked = respectsOf(question);
 	return candidates
 		.map((candidate) => scoreCandidate(question, candidate, rarity, weights, asked))
@@ -34,12 +34,26 @@ export function rankPrecedents(
 		.slice(0, options.limit);
 }
 
+type Weights = NonNullable<RankOptions['weights']>;
+
+/** What the parts count for this question: symptoms and causes that only its words tell of count less. */
+function weighParts({ profile }: Question, weights: Weights): Weights {
+	const isShown = profile.symptoms.some((symptom) => !symptom.told);
+	const isGiven = profile.causes.length > 0 || profile.confirmedCause !== null;
+	return {
+		...weights,
+		symptoms: (weights.symptoms ?? 0) * (isShown ? 1 : ONLY_TOLD_COUNTS),
+		cause: (weights.cause ?? 0) * (isGiven ? 1 : ONLY_TOLD_COUNTS)
+	};
+}
+
 /** The respects on which the question can be compared with anything. */
 function respectsOf({ profile, bestBm25 }: Question): ReadonlySet<ReasonKind> {
 	const respects = new Set<ReasonKind>();
 	if (bestBm25 > 0) respects.add('words');
 	if (profile.symptoms.length > 0) respects.add('symptoms');
-	if (profile.causes.length > 0 || profile.confirmedCause !== null) respects.add('cause');
+	if (profile.causes.length + profile.toldCauses.length > 0 || profile.confirmedCause !== null)
+		respects.add('cause');
 	if (profile.fingerprints.length + profile.relations.length + profile.traits.length > 0)
 		respects.add('statement');
 	if (compareSettings(profile, profile) !== null) respects.add('setting');
@@ -50,7 +64,7 @@ function scoreCandidate(
 	question: Question,
 	candidate: Candidate,
 	rarity: Rarity,
-	weights: Readonly<Partial<Record<ReasonKind, number>>>,
+	weights: Weights,
 	asked: ReadonlySet<ReasonKind>
 ): RankedPrecedent {
 	const likeness = compareAll(question, candidate, rarity);
@@ -81,7 +95,7 @@ function compareAll({ profile, bestBm25 }: Question, candidate: Candidate, rarit
 }
 
 /** The same engine or service alone makes no precedent, unless it is all that counts. */
-function isAlike(ranked: RankedPrecedent, weights: NonNullable<RankOptions['weights']>): boolean {
+function isAlike(ranked: RankedPrecedent, weights: Weights): boolean {
 	const counting = REASON_KINDS.filter((kind) => kind !== 'setting' && (weights[kind] ?? 0) > 0);
 	const telling = counting.length > 0 ? counting : REASON_KINDS;
 	return telling.some((kind) => ranked.contributions[kind] > 0);

@@ -89,6 +89,11 @@ export const CONCEPTS: readonly Concept[] = [
 		'sort',
 		/\bsort(?:s|ed|ing)?\b|\bfilesort\b|\border by\b|\bmerge[_ ]passes\b|\bquicksort\b/i
 	),
+	concept(
+		'merge-passes',
+		'merge passes of a sort',
+		/\b(?:merge|sort)[_ ]passes\b|\bexternal (?:merge|sort)\b/
+	),
 	concept('aggregate', 'aggregate', /\bhash ?agg(?:regate)?\b|\bgroup(?:s|ed|ing)?\b|\baggregat/),
 	concept(
 		'materialize',

@@ -41,6 +41,11 @@ export const DECADE_COUNTS = 0.15;
 /** What a symptom that only the narrative tells of counts beside one that evidence shows. Useful 0..0.6. */
 export const TOLD_COUNTS = 0.4;
 
+/** What the symptoms as a whole count where the one asked about has only told ones. Useful 0.1..0.6. */
+export const ONLY_TOLD_COUNTS = 0.3;
+
+/** How far a cause is believed that only the words name. Useful 0.1..0.5. */
+export const TOLD_CAUSE_COUNTS = 0.3;
 /** What the rules' guesses count once a person has confirmed a cause. Useful 0..0.5. */
 export const DOUBT_AFTER_CONFIRMATION = 0.25;
 

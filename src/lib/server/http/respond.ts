@@ -57,6 +57,11 @@ export function respond<T>(outcome: Outcome<T>, options: RespondOptions = {}): R
 	return new Response(JSON.stringify(outcome.value), { status, headers });
 }
 
+/** A list that has no pages: `{ items }`. */
+export function respondItems<T>(outcome: Outcome<T[]>): Response {
+	return outcome.ok ? respond({ ok: true, value: { items: outcome.value } }) : respond(outcome);
+}
+
 /** A revision as a strong entity tag. */
 export function toEtag(revision: number): string {
 	return `"${revision}"`;

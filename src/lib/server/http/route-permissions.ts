@@ -25,7 +25,11 @@ export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
 	'/(app)/refused': { GET: 'account.own' },
 	'/(app)/gauge': { GET: 'reading.make', POST: 'reading.make' },
 	'/(app)/incidents': { GET: 'incident.read' },
-	'/(app)/incidents/[number]': { GET: 'incident.read', POST: 'incident.write' },
+	'/(app)/incidents/[number]': {
+		GET: 'incident.read',
+		POST: 'incident.write',
+		actions: { removeEvidence: 'evidence.remove' }
+	},
 	'/(app)/incidents/new': { GET: 'incident.write', POST: 'incident.write' },
 	'/(app)/runbooks': { GET: 'runbook.read' },
 	'/(app)/runbooks/[slug]': { GET: 'runbook.read', actions: { start: 'attempt.write' } },
@@ -46,8 +50,11 @@ export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
 	'/api/v1/incidents/[number]/entries/[id]': { GET: 'entry.read', PATCH: 'entry.write' },
 	'/api/v1/incidents/[number]/evidence': { POST: 'evidence.write' },
 	'/api/v1/incidents/[number]/evidence/[id]': { DELETE: 'evidence.remove' },
+	'/api/v1/incidents/[number]/precedents': { GET: 'precedent.read' },
 	'/api/v1/openapi.json': { GET: 'open' },
+	'/api/v1/precedents': { POST: 'reading.make' },
 	'/api/v1/readings': { POST: 'reading.make' },
+	'/api/v1/search': { GET: 'search.read' },
 	'/api/v1/sizing': { POST: 'reading.make' },
 	'/api/v1/watch': { GET: 'watch.read' }
 };

@@ -30,7 +30,7 @@ export async function askIncident(number: number): Promise<Asked | null> {
 	const incident = await store.readAskedIncident(number);
 	if (incident === null) return null;
 	const text = `${incident.title}\n${incident.narrative}`;
-	const profile = profileOf({ ...incident, text }, incident.evidence ?? NO_EVIDENCE);
+	const profile = profileOf({ ...incident, text, resolution: null }, incident.evidence ?? NO_EVIDENCE);
 	return { number, text, profile, at: incident.startedAt ?? incident.createdAt };
 }
 
@@ -45,7 +45,8 @@ export function askDraft(draft: Draft, now: Date): Asked {
 		engine: draft.engine ?? engine ?? null,
 		database: draft.database ?? null,
 		startedAt: draft.startedAt ?? null,
-		cause: null
+		cause: null,
+		resolution: null
 	};
 	const profile = profileOf(fields, profileEvidence(readings));
 	return { number: null, text, profile, at: draft.startedAt ?? now.toISOString() };

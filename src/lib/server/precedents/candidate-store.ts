@@ -94,12 +94,12 @@ export interface CandidateRow {
 	startedAt: string | null;
 	resolvedAt: string | null;
 	cause: string | null;
+	/** First characters, as many as may be shown and searched for causes. */
 	resolution: string | null;
 	evidence: EvidenceProfile | null;
 }
 
-/** What is shown of a resolution. */
-const RESOLUTION_SHOWN = 300;
+/** Of narrative and resolution this much is looked at for symptoms and causes told in words. */
 const OPENING = 2000;
 
 /** The incidents with these numbers; merged ones are left out, for they stand under another number. */
@@ -107,10 +107,10 @@ export async function readCandidates(numbers: readonly number[]): Promise<Candid
 	if (numbers.length === 0) return [];
 	const rows = await select<Omit<CandidateRow, 'evidence'> & { evidence: string | null }>(
 		`SELECT i.number, i.title, substr(i.narrative, 1, :opening) AS opening, i.service, i.engine, i.database,
-			i.state, i.startedAt, i.resolvedAt, i.cause, substr(i.resolution, 1, :shown) AS resolution, p.evidence
+			i.state, i.startedAt, i.resolvedAt, i.cause, substr(i.resolution, 1, :opening) AS resolution, p.evidence
 		FROM incidents i LEFT JOIN precedentProfiles p ON p.incidentNumber = i.number
 		WHERE i.number IN (:numbers) AND i.mergedInto IS NULL`,
-		{ numbers: [...numbers], opening: OPENING, shown: RESOLUTION_SHOWN }
+		{ numbers: [...numbers], opening: OPENING }
 	);
 	return rows.map((row) => ({
 		...row,
