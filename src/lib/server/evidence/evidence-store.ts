@@ -99,6 +99,11 @@ export function listUnread(): Promise<EvidenceRow[]> {
 	return selectRows("e.state = 'reading'", {});
 }
 
+/** All evidence whose masked bytes are stored, by id. */
+export function listReadable(): Promise<EvidenceRow[]> {
+	return selectRows("e.sha256 <> ''", {});
+}
+
 /** Writes a new row and answers its id. */
 export async function insertEvidence(
 	values: CreationAttributes<EvidenceModel>,

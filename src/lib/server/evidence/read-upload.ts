@@ -45,7 +45,8 @@ async function isPicture(path: string): Promise<boolean> {
 	}
 }
 
-function kindOf(readings: readonly Reading[], picture: boolean): EvidenceKind {
+/** The kind of evidence that its readings make it. */
+export function kindOf(readings: readonly Reading[], picture: boolean): EvidenceKind {
 	if (picture) return 'picture';
 	// A log may hold plans, so that its own reading decides before theirs.
 	if (readings.some((reading) => reading.kind === 'log')) return 'log';

@@ -42,7 +42,9 @@ interface Spooled extends Upload {
 
 /** Files of one request: written beside each other, and taken back together when it fails. */
 class SpoolStorage implements StorageEngine {
-	readonly spooled: Spooled[] = [];
+	/** By the order in which they came: a short file is written before a long one that came first. */
+	readonly #spooled = new Map<number, Spooled>();
+	#arrived = 0;
 	readonly #paths: string[] = [];
 	#failed = false;
 
@@ -66,6 +68,7 @@ class SpoolStorage implements StorageEngine {
 
 	/** Writes a stream into the spool, hashed on the way. */
 	async add(stream: Readable, field: string, name: string, mimeType: string): Promise<Spooled> {
+		const place = this.#arrived++;
 		const path = await makeSpoolPath('raw');
 		this.#paths.push(path);
 		const hash = createHash('sha256');
@@ -90,8 +93,13 @@ class SpoolStorage implements StorageEngine {
 			mimeType,
 			rawSha256: hash.digest('hex')
 		};
-		this.spooled.push(spooled);
+		this.#spooled.set(place, spooled);
 		return spooled;
+	}
+
+	/** The files in the order in which they came. */
+	list(): Spooled[] {
+		return [...this.#spooled].sort(([one], [other]) => one - other).map(([, spooled]) => spooled);
 	}
 
 	/** Takes back whatever was written, now and by writes still under way. */
@@ -145,7 +153,8 @@ function runMulter(request: Request, storage: SpoolStorage, options: ReceiveOpti
 	}).fields(accepted);
 	const body = request.body === null ? Readable.from([]) : Readable.from(readLimited(request.body));
 	const incoming = Object.assign(body, {
-		headers: Object.fromEntries(request.headers)
+		// Multer takes a request that announces neither length nor encoding for one without a body.
+		headers: { 'transfer-encoding': 'chunked', ...Object.fromEntries(request.headers) }
 	}) as unknown as MulterRequest;
 	return new Promise((resolve, reject) => {
 		body.on('error', reject);
@@ -184,7 +193,7 @@ async function sortParts(
 		if (name !== options.field && last !== undefined) fields[name] = last;
 	}
 	const uploads: Upload[] = [];
-	for (const { field, ...upload } of storage.spooled) {
+	for (const { field, ...upload } of storage.list()) {
 		if (field === options.field) uploads.push(upload);
 		else if (upload.bytes > MOST_DOCUMENT_BYTES) return refuseTooLarge();
 		else {

@@ -1,3 +1,4 @@
+import { prefillFrom } from '$lib/domain/incident/prefill';
 import type { LogHints, Reading } from '$lib/domain/reading/reading';
 import type { SymptomId } from '$lib/domain/symptom/symptom';
 import type { Transaction } from '../db/transaction';
@@ -5,7 +6,8 @@ import {
 	findIncident,
 	replaceSymptoms,
 	updateIncident,
-	type IncidentChanges
+	type IncidentChanges,
+	type IncidentRow
 } from '../incidents/incident-store';
 import { listEvidence } from './evidence-store';
 
@@ -20,29 +22,31 @@ function weighSymptoms(readings: readonly Reading[]): Map<SymptomId, number> {
 	return weights;
 }
 
-/** What the evidence knows of the setting; only where exactly that is still empty. */
+/** What several logs say, as one would. */
+function joinHints(hints: readonly LogHints[]): LogHints {
+	return {
+		applications: hints.flatMap(({ applications }) => applications),
+		databases: hints.flatMap(({ databases }) => databases),
+		users: hints.flatMap(({ users }) => users)
+	};
+}
+
+/** What the evidence knows of the setting, by the rules that fill the form; only where that is still empty. */
 function fillSetting(
-	incident: {
-		engine: string | null;
-		engineVersion: string | null;
-		service: string | null;
-		database: string | null;
-	},
+	incident: Pick<IncidentRow, 'engine' | 'engineVersion' | 'service' | 'database'>,
 	readings: readonly Reading[],
 	hints: readonly LogHints[]
 ): IncidentChanges {
-	const changes: IncidentChanges = {};
-	const told = readings.find((reading) => reading.engine !== 'unknown');
-	if (incident.engine === null && told !== undefined) changes.engine = told.engine;
-	const engine = incident.engine ?? told?.engine;
-	const versioned = readings.find((reading) => reading.engine === engine && reading.engineVersion !== null);
-	if (incident.engineVersion === null && versioned !== undefined)
-		changes.engineVersion = versioned.engineVersion;
-	const service = hints.flatMap((hint) => hint.applications)[0];
-	if (incident.service === null && service !== undefined) changes.service = service;
-	const database = hints.flatMap((hint) => hint.databases)[0];
-	if (incident.database === null && database !== undefined) changes.database = database;
-	return changes;
+	const told = prefillFrom(readings, joinHints(hints));
+	const engine = incident.engine ?? told.engine?.value ?? null;
+	// Another engine's version would be worse than none.
+	const version = engine === told.engine?.value ? (told.engineVersion?.value ?? null) : null;
+	return {
+		engine,
+		engineVersion: incident.engineVersion ?? version,
+		service: incident.service ?? told.service?.value ?? null,
+		database: incident.database ?? told.database?.value ?? null
+	};
 }
 
 /**
