@@ -1,4 +1,13 @@
-import type { OperatorKind, PlanOperator } from './operator';
+import type { Operator, OperatorKind } from './operator';
+
+/** What a phrase is made of: an operator of a plan or of a reading, which no longer carries the facts. */
+export interface PhrasedOperator extends Pick<
+	Operator,
+	'kind' | 'name' | 'relation' | 'alias' | 'condition'
+> {
+	children: readonly PhrasedOperator[];
+	facts?: { indexName: string | null };
+}
 
 /** Kinds that read something: "scan of invoice_line". */
 const READS: Partial<Record<OperatorKind, string>> = {
@@ -17,10 +26,10 @@ const JOINS: readonly OperatorKind[] = ['hash-join', 'merge-join', 'nested-loop'
 const LONGEST_CONDITION = 60;
 
 /** An operator in a few words for a sentence: "scan of invoice_line", "hash join on invoice_no", "sort by currency, charge_code". */
-export function phraseOperator(operator: PlanOperator): string {
+export function phraseOperator(operator: PhrasedOperator): string {
 	const reads = READS[operator.kind];
 	if (reads !== undefined && operator.relation !== null) return `${reads} ${operator.relation}`;
-	const { indexName } = operator.facts;
+	const indexName = operator.facts?.indexName ?? null;
 	if (operator.kind === 'bitmap-index' && indexName !== null) return `bitmap scan of index ${indexName}`;
 	if (operator.kind === 'subquery' && operator.alias !== null) return `subquery ${operator.alias}`;
 	const [input] = operator.children;
@@ -31,7 +40,7 @@ export function phraseOperator(operator: PlanOperator): string {
 	return `${what} ${JOINS.includes(operator.kind) ? 'on' : 'by'} ${condition}`;
 }
 
-function shortCondition(operator: PlanOperator): string | null {
+function shortCondition(operator: PhrasedOperator): string | null {
 	const { kind, condition } = operator;
 	if (condition === null || condition === '') return null;
 	if (JOINS.includes(kind)) return sharedColumn(condition) ?? shorten(withoutBrackets(condition));
