@@ -79,7 +79,7 @@ function toUrlHost(host: string): string {
  * variable that is wrong; values are never repeated, since some are secrets. An empty value counts as unset.
  */
 export function readConfig(env: Record<string, string | undefined>): Config {
-	const given = Object.fromEntries(Object.entries(env).filter(([, value]) => value !== ''));
+	const given = withoutEmpty(env);
 	const result = environment.safeParse(given);
 	if (!result.success) {
 		const issue = result.error.issues[0];
@@ -101,16 +101,42 @@ export function readConfig(env: Record<string, string | undefined>): Config {
 
 let current: Config | null = null;
 
-/** The settings of this process; read from the environment at the first call. Throws ConfigError. */
-export function config(): Config {
-	current ??= readConfig(process.env);
+/**
+ * The settings of this process; read from the environment at the first call, where `defaults` fill in what it
+ * leaves unset. Throws ConfigError.
+ */
+export function config(defaults: Record<string, string> = {}): Config {
+	current ??= readConfig({ ...defaults, ...withoutEmpty(process.env) });
 	return current;
+}
+
+function withoutEmpty(env: Record<string, string | undefined>): Record<string, string | undefined> {
+	return Object.fromEntries(Object.entries(env).filter(([, value]) => value !== ''));
 }
 
 /** Lays other settings over those of the environment: programs with their own arguments, and tests. */
 export function overrideConfig(settings: Partial<Config>): Config {
 	current = { ...config(), ...settings };
 	return current;
+}
+
+/** What the adapter counts a request's body against, beyond the largest upload: its parts' heads and fields. */
+const BODY_ALLOWANCE_MB = 16;
+/** How long a stop waits for answers under way. */
+const SHUTDOWN_SECONDS = 10;
+
+/**
+ * Hands settings to the built server, which reads the environment itself, in its own bundle. Only for a
+ * program that starts the server in its own process.
+ */
+export function handToServer(settings: Config): void {
+	const { env } = process;
+	env.DATA_DIR = settings.dataDir;
+	env.HOST = settings.host;
+	env.PORT = String(settings.port);
+	env.ORIGIN = settings.origin;
+	env.BODY_SIZE_LIMIT ??= `${settings.maxUploadMb + BODY_ALLOWANCE_MB}M`;
+	env.SHUTDOWN_TIMEOUT ??= String(SHUTDOWN_SECONDS);
 }
 
 /** Whether a host is reached from this machine alone. */

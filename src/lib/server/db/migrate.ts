@@ -47,3 +47,8 @@ export async function readSchema(db: Database): Promise<string | null> {
 	const executed = await umzugOf(db).executed();
 	return executed.at(-1)?.name ?? null;
 }
+
+/** Names of the migrations that wait to be applied. */
+export async function listPendingMigrations(db: Database): Promise<string[]> {
+	return (await umzugOf(db).pending()).map((migration) => migration.name);
+}

@@ -25,9 +25,23 @@ const tokenGuesses = new RateLimiterMemory({
 	duration: WINDOW_SECONDS
 });
 
+/** The eight groups of an IPv6 address, `::` written out. */
+function expandIPv6(address: string): string[] {
+	const [head = '', tail] = address.split('::');
+	const before = head === '' ? [] : head.split(':');
+	if (tail === undefined) return before;
+	const after = tail === '' ? [] : tail.split(':');
+	return [...before, ...Array<string>(8 - before.length - after.length).fill('0'), ...after];
+}
+
 /** One household or server has a whole /64 of IPv6: its first four groups count as one address. */
 function toNetwork(address: string): string {
-	return isIPv6(address) && !address.includes('.') ? address.split(':').slice(0, 4).join(':') : address;
+	// An IPv4 address in IPv6 dress ends in dots.
+	if (!isIPv6(address) || address.includes('.')) return address;
+	return expandIPv6(address)
+		.slice(0, 4)
+		.map((group) => Number.parseInt(group, 16).toString(16))
+		.join(':');
 }
 
 function personKey(email: string, address: string): string {
