@@ -3,6 +3,7 @@ import { config, ConfigError, type Config } from './config';
 import { closeDatabase, openDatabase } from './db/connection';
 import { releaseRunningKeys } from './http/idempotency-store';
 import { log } from './log';
+import { adoptContent } from './runbooks/adopt-content';
 import { startSearch } from './search/start-search';
 import { readSecretKey } from './secret-key';
 import * as sessions from './sessions/sessions-service';
@@ -27,6 +28,7 @@ export async function startServer(): Promise<void> {
 	readSecretKey(settings);
 	await openDatabase(settings.dataDir);
 	await releaseRunningKeys();
+	await adoptContent();
 	startSearch();
 	const tidying = setInterval(() => {
 		sessions.deleteExpired().catch((error: unknown) => log().error({ err: error }, 'tidying failed'));

@@ -31,9 +31,7 @@ export const runbookFrontMatter = z.object({
 export type RunbookFrontMatter = z.infer<typeof runbookFrontMatter>;
 
 /** A runbook as it is written (API: RunbookInput). */
-export const runbookInput = runbookFrontMatter
-	.omit({ owner: true })
-	.extend({
-		body: z.string({ error: 'Write at least one step.' }).max(200_000, 'At most 200,000 characters.')
-	});
+export const runbookInput = runbookFrontMatter.omit({ owner: true }).extend({
+	body: z.string({ error: 'Write at least one step.' }).max(200_000, 'At most 200,000 characters.')
+});
 export type RunbookInput = z.infer<typeof runbookInput>;

@@ -39,6 +39,7 @@ export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
 	'/(app)/symptoms/[id]': { GET: 'symptom.read' },
 	'/(app)/theme': { POST: 'account.own' },
 
+	'/api/v1/cautions': { POST: 'reading.make' },
 	'/api/v1/evidence': { POST: 'evidence.write' },
 	'/api/v1/evidence/[sha256]': { GET: 'evidence.read' },
 	'/api/v1/health': { GET: 'open' },
@@ -55,6 +56,8 @@ export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
 	'/api/v1/precedents': { POST: 'reading.make' },
 	'/api/v1/readings': { POST: 'reading.make' },
 	'/api/v1/search': { GET: 'search.read' },
+	'/api/v1/runbooks': { GET: 'runbook.read' },
+	'/api/v1/runbooks/[slug]': { GET: 'runbook.read' },
 	'/api/v1/sizing': { POST: 'reading.make' },
 	'/api/v1/watch': { GET: 'watch.read' }
 };

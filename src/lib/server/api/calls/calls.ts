@@ -2,6 +2,7 @@ import type { Call } from '../call';
 import { EVIDENCE_CALLS } from './evidence-calls';
 import { FINDING_CALLS } from './finding-calls';
 import { INCIDENT_CALLS } from './incident-calls';
+import { RUNBOOK_CALLS } from './runbook-calls';
 import { SERVICE_CALLS } from './service-calls';
 
 /** Every call of the API, as the document lists them. A route without its line here fails a test. */
@@ -9,5 +10,6 @@ export const CALLS: readonly Call[] = [
 	...SERVICE_CALLS,
 	...EVIDENCE_CALLS,
 	...FINDING_CALLS,
-	...INCIDENT_CALLS
+	...INCIDENT_CALLS,
+	...RUNBOOK_CALLS
 ];

@@ -1,4 +1,5 @@
 import type { z } from 'zod';
+import { cautionInput } from '$lib/domain/caution/caution-input';
 import {
 	attemptInput,
 	attemptPatch,
@@ -17,5 +18,6 @@ export const INPUTS: ReadonlyMap<string, z.ZodType> = new Map<string, z.ZodType>
 	['EntryPatch', entryPatch],
 	['AttemptInput', attemptInput],
 	['AttemptPatch', attemptPatch],
-	['SizingInput', sizingInput]
+	['SizingInput', sizingInput],
+	['CautionInput', cautionInput]
 ]);
