@@ -55,13 +55,7 @@ describe('incidentChanged', () => {
 	it('makes words, stems, and names whole and in parts findable at once', async () => {
 		const number = await makeIncident({ narrative: 'The hashes on yard_move.moved_at spilled.' });
 		await write((transaction) => incidentChanged(number, transaction));
-		for (const expression of [
-			'"hash"',
-			'"spill"',
-			'"yard_move"',
-			'"yard" + "move"',
-			'"yard_move.moved_at"'
-		]) {
+		for (const expression of ['"hash"', '"spill"', '"yard_move"', '"yard" + "mov"', '"yard_move.moved_at"']) {
 			expect(await numbersWith(expression), expression).toEqual([number]);
 		}
 	});
