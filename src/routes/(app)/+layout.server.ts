@@ -1,4 +1,4 @@
-import { THEME_COOKIE, toTheme } from '$lib/components/shell/theme';
+import { THEME_COOKIE, toTheme } from '$lib/domain/person/theme';
 import { requireActor } from '$lib/server/http/guard';
 import type { LayoutServerLoad } from './$types';
 

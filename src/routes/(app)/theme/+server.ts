@@ -1,12 +1,14 @@
 import { redirect } from '@sveltejs/kit';
-import { THEME_COOKIE, toTheme } from '$lib/components/shell/theme';
+import { THEME_COOKIE, toTheme } from '$lib/domain/person/theme';
+import { receiveForm } from '$lib/server/http/form';
+import { unwrap } from '$lib/server/http/respond';
 import type { RequestHandler } from './$types';
 
 const YEAR_SECONDS = 31_536_000;
 
 /** Keeps the choice of colours on this device and goes back to where it was made. */
 export const POST: RequestHandler = async ({ request, cookies, url }) => {
-	const form = await request.formData();
+	const form = unwrap(await receiveForm(request));
 	cookies.set(THEME_COOKIE, toTheme(String(form.get('theme') ?? '')), {
 		path: '/',
 		maxAge: YEAR_SECONDS,

@@ -1,5 +1,5 @@
 import type { Handle } from '@sveltejs/kit';
-import { THEME_COOKIE, toTheme } from '$lib/components/shell/theme';
+import { THEME_COOKIE, toTheme } from '$lib/domain/person/theme';
 
 /**
  * Writes this device's choice of colours into the page before it leaves, so that the first paint is right
