@@ -1,3 +1,4 @@
+import { formatRows } from '../sizing/units';
 import type { Symptom } from '../reading/reading';
 
 /** Figures of a symptom without those that the evidence does not hold. */
@@ -9,5 +10,5 @@ export function toFigures(figures: Record<string, number | string | null>): Symp
 
 /** "1 batch", "8 batches": a count with its noun. */
 export function countOf(count: number, singular: string, plural = `${singular}s`): string {
-	return `${String(count).replace(/\B(?=(\d{3})+(?!\d))/g, ',')} ${count === 1 ? singular : plural}`;
+	return `${formatRows(count)} ${count === 1 ? singular : plural}`;
 }

@@ -1,4 +1,5 @@
 import type { Cause, OperatorSizing, Plan, Spills, Symptom, Trail } from '../reading/reading';
+import { findTrails } from '../reading/drift-trail';
 import { findSymptoms } from './find-symptoms';
 import { toPlanTree } from './plan-tree';
 
@@ -14,5 +15,5 @@ export interface Interpretation {
 export function interpretPlan(plan: Plan, spills: Spills | null): Interpretation {
 	const tree = toPlanTree(plan.root);
 	const symptoms = findSymptoms({ plan, tree, spills });
-	return { symptoms, trails: [], causes: [], sizing: [] };
+	return { symptoms, trails: findTrails(tree), causes: [], sizing: [] };
 }

@@ -10,7 +10,10 @@ const PHRASES: readonly [SymptomId, RegExp][] = [
 		'hash-spill',
 		/\bhash(?:es|ed)?\b[^.;\n]{0,60}\b(?:spill\w*|to disk|on disk|overflow\w*|temp(?:orary)? files?)\b/
 	],
-	['hash-spill', /\bbatches\b[^.;\n]{0,20}\b(?:[2-9]|\d{2,})\b|\b(?:[2-9]|\d{2,})\s+batches\b/],
+	[
+		'hash-spill',
+		/\bbatches[:=]?\s+(?:[2-9]|\d{2,})\b|\b(?:[2-9]|\d{2,})\s+batches\b|\bbatches (?:go|went|grew) from\b/
+	],
 	[
 		'sort-spill',
 		/\bexternal (?:merge|sort)\b|\bsort(?:s|ed|ing)?\b[^.;\n]{0,40}\b(?:spill\w*|to disk|on disk)\b/
@@ -51,7 +54,7 @@ const PHRASES: readonly [SymptomId, RegExp][] = [
 	['bitmap-lossy', /\blossy\b/],
 	[
 		'missing-parallel-workers',
-		/\bworkers? (?:launched|missing)\b|\bworkers planned\b[^.;\n]{0,20}\blaunched\b/
+		/\bworkers? (?:launched|started)?:? ?(?:0|none|missing)\b|\blaunched (?:0|none|only)\b|\bone came\b/
 	],
 	['heap-fetches-high', /\bheap fetches\b/],
 	['cold-reads', /\bcold cache\b|\bcache (?:is|was) cold\b|\bread from disk\b/],

@@ -31,7 +31,7 @@ export const bitmapLossy: SymptomRule = {
 					id: 'bitmap-lossy' as const,
 					operator: operator.path,
 					weight: Math.max(
-						weighShare(lossy / (lossy + exact)) * 0.8,
+						weighShare((lossy / (lossy + exact)) * 0.7),
 						weighRows((rechecked ?? 0) * (operator.loops ?? 1))
 					),
 					figures: toFigures({

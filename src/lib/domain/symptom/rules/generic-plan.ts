@@ -3,10 +3,10 @@ import { phraseOperator } from '../../reading/operator-phrase';
 import type { Symptom } from '../../reading/reading';
 import { formatRows } from '../../sizing/units';
 import { countOf, toFigures } from '../figures';
+import { findMisestimate } from '../misestimates';
 import type { PlanTree } from '../plan-tree';
 import type { RuleInput, SymptomRule } from '../symptom';
 import { weighFactor } from '../weight';
-import { findMisestimate } from './estimates';
 
 /** Conditions in which a parameter of a prepared statement may stand unresolved. */
 function conditionsOf({ facts }: PlanOperator): string[] {
@@ -64,7 +64,7 @@ export const genericPlan: SymptomRule = {
 						actual,
 						q: Math.round(error.q * 100) / 100
 					}),
-					summary: `The ${phraseOperator(operator)} was planned without the value of ${countOf(parameters.length, 'parameter')} (${parameters.join(', ')}): ${formatRows(planned)} rows expected, ${formatRows(actual)} came.`
+					summary: `The ${phraseOperator(operator)} was planned without the value of ${countOf(parameters.length, 'parameter')} (${parameters.join(', ')}): ${countOf(planned, 'row')} expected, ${formatRows(actual)} came.`
 				}
 			];
 		});

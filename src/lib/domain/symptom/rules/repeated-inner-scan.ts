@@ -2,11 +2,12 @@ import { walkOperators, type PlanOperator } from '../../reading/operator';
 import { phraseOperator } from '../../reading/operator-phrase';
 import type { Symptom } from '../../reading/reading';
 import { formatMs, formatRows, formatTimes } from '../../sizing/units';
-import { toFigures } from '../figures';
+import { countOf, toFigures } from '../figures';
 import type { PlanTree } from '../plan-tree';
 import type { RuleInput, SymptomRule } from '../symptom';
 import type { Threshold } from '../threshold';
 import { weighRows } from '../weight';
+import { isScan } from './filter-discards-most';
 
 export const LEAST_RUNS: Threshold = {
 	name: 'runs of an inner side without an index',
@@ -99,9 +100,15 @@ function findUnindexed({ inner }: Repeated): Symptom[] | null {
 			inner,
 			touched,
 			null,
-			`The ${phraseOperator(inner)} has no index to use and ran ${formatRows(loops)} times, looking at ${formatRows(touched)} rows in all`
+			`The ${phraseOperator(findScan(inner))} has no index to use and ran ${formatRows(loops)} times, looking at ${formatRows(touched)} rows in all`
 		)
 	];
+}
+
+/** The table that is read again and again, for naming it. */
+function findScan(inner: PlanOperator): PlanOperator {
+	for (const each of walkOperators(inner)) if (each.relation !== null && isScan(each)) return each;
+	return inner;
 }
 
 function findOverrun({ inner, outer }: Repeated): Symptom[] | null {
@@ -110,13 +117,13 @@ function findOverrun({ inner, outer }: Repeated): Symptom[] | null {
 	for (const access of walkOperators(inner)) {
 		const loops = access.loops ?? 0;
 		if (!INDEXED.includes(access.kind) || loops < LEAST_INDEX_RUNS.value) continue;
-		const expected = formatRows(outer.facts.plannedRowsPerLoop ?? 0);
+		const expected = countOf(outer.facts.plannedRowsPerLoop ?? 0, 'outer row was', 'outer rows were');
 		return [
 			toSymptom(
 				access,
 				rowsTouched(access),
 				error,
-				`The ${phraseOperator(access)} ran ${formatRows(loops)} times where ${expected} outer rows were expected, ${formatTimes(error)} too few`
+				`The ${phraseOperator(access)} ran ${formatRows(loops)} times where ${expected} expected: ${formatTimes(error)} as many`
 			)
 		];
 	}
