@@ -42,8 +42,8 @@ interface Row
 
 const countOf = (outcome: string) => `coalesce(sum(outcome = '${outcome}'), 0)`;
 
-const FROM = `FROM runbooks b
-	JOIN runbookRevisions r ON r.runbookId = b.id AND r.revision = coalesce(b.publishedRevision, b.revision)
+const fromRevision = (revision: string) => `FROM runbooks b
+	JOIN runbookRevisions r ON r.runbookId = b.id AND r.revision = ${revision}
 	LEFT JOIN people owner ON owner.id = b.ownerId
 	LEFT JOIN people reviewer ON reviewer.id = b.reviewerId
 	LEFT JOIN (
@@ -51,6 +51,8 @@ const FROM = `FROM runbooks b
 			${countOf('no-effect')} AS noEffect, ${countOf('made-worse')} AS madeWorse
 		FROM attempts WHERE runbookSlug IS NOT NULL GROUP BY runbookSlug
 	) a ON a.runbookSlug = b.slug`;
+
+const FROM = fromRevision('coalesce(b.publishedRevision, b.revision)');
 
 const COLUMNS = `b.id, b.slug, b.state, b.reviewDue, r.revision, r.title, r.summary, r.body, r.engines, r.symptoms,
 	r.reviewEveryDays, b.ownerId, owner.name AS ownerName, b.reviewerId, reviewer.name AS reviewerName,
@@ -147,9 +149,13 @@ export async function listForSymptoms(
 	return rows.map(toRunbook);
 }
 
-/** One runbook; null: there is none of that slug. */
-export async function findRunbook(slug: string): Promise<StoredRunbook | null> {
-	const row = await selectOne<Row>(`SELECT ${COLUMNS} ${FROM} WHERE b.slug = :slug`, { slug });
+/** One runbook, with the text of a revision where one is named; null: there is none of that slug, or no such revision. */
+export async function findRunbook(
+	slug: string,
+	revision: number | null = null
+): Promise<StoredRunbook | null> {
+	const from = revision === null ? FROM : fromRevision(':revision');
+	const row = await selectOne<Row>(`SELECT ${COLUMNS} ${from} WHERE b.slug = :slug`, { slug, revision });
 	return row === null ? null : toRunbook(row);
 }
 

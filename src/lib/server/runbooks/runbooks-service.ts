@@ -56,10 +56,17 @@ export interface RunbookPage {
 	attempts: RunbookAttempt[];
 }
 
-/** The runbook as its page draws it: rendered, with the attempts made with it. */
-export async function readPage(actor: Actor, slug: string): Promise<Outcome<RunbookPage>> {
+/**
+ * The runbook as its page draws it: rendered, with the attempts made with it. An attempt goes on by the
+ * `revision` that it began with, whatever was published since.
+ */
+export async function readPage(
+	actor: Actor,
+	slug: string,
+	revision: number | null = null
+): Promise<Outcome<RunbookPage>> {
 	if (!can(actor, 'runbook.read')) return needsReader();
-	const stored = await findRunbook(slug);
+	const stored = await findRunbook(slug, revision);
 	if (stored === null) return noRunbook(slug);
 	const [runbook, page, attempts] = await Promise.all([
 		toRunbook(stored),

@@ -1,0 +1,136 @@
+import { listRequiredChecks } from '$lib/domain/caution/required-checks';
+import type { Attempt, AttemptOutcome } from '$lib/domain/incident/attempt';
+import type { Actor } from '$lib/domain/person/person';
+import { fail, ok, type Outcome } from '$lib/domain/problem';
+import * as attempts from '../incidents/attempts-service';
+import * as entries from '../incidents/entries-service';
+import * as incidents from '../incidents/incidents-service';
+import * as runbooks from '../runbooks/runbooks-service';
+
+/** Which attempt, in which incident, by which runbook: all three have to fit together. */
+export interface Place {
+	slug: string;
+	incident: number;
+	attempt: number;
+}
+
+/** An attempt with the steps of the runbook's revision that it follows. */
+interface Followed {
+	attempt: Attempt;
+	page: runbooks.RunbookPage;
+}
+
+async function find(actor: Actor, place: Place): Promise<Outcome<Followed>> {
+	const attempt = await attempts.read(actor, place.incident, place.attempt);
+	if (!attempt.ok) return attempt;
+	const { runbook, runbookRevision } = attempt.value;
+	if (runbook !== place.slug || runbookRevision === null)
+		return fail('not_found', `Attempt ${place.attempt} does not follow the runbook ${place.slug}.`);
+	const page = await runbooks.readPage(actor, place.slug, runbookRevision);
+	return page.ok ? ok({ attempt: attempt.value, page: page.value }) : page;
+}
+
+/** One step to be done, with everything that the checklist shows round it. */
+export async function read(actor: Actor, place: Place, wanted: number | null) {
+	const [found, incident] = await Promise.all([find(actor, place), incidents.read(actor, place.incident)]);
+	if (!found.ok) return found;
+	if (!incident.ok) return incident;
+	const { attempt, page } = found.value;
+	const { number, title, revision, evidence } = incident.value;
+	const next = attempt.steps.find((step) => step.tickedAt === null && step.skipped === null)?.number;
+	const current = page.steps.find((step) => step.number === (wanted ?? next)) ?? null;
+	const { slug, state } = page.runbook;
+	return ok({
+		attempt,
+		incident: { number, title, revision },
+		evidence: evidence.map(({ id, name }) => ({ id, name })),
+		runbook: { slug, title: page.runbook.title, state },
+		steps: page.steps.map((step) => ({ number: step.number, title: step.title })),
+		/** null: every step is ticked or skipped. */
+		current,
+		/** What has to be ticked before the statements of the step may be copied. */
+		checks: current === null ? [] : listRequiredChecks(current.statements)
+	});
+}
+
+/** Ticks a step; refused while its caution or one of its prechecks is not ticked. */
+export async function tick(
+	actor: Actor,
+	place: Place,
+	input: { step: number; revision: number; checks: readonly number[] }
+): Promise<Outcome<Attempt>> {
+	const found = await find(actor, place);
+	if (!found.ok) return found;
+	const step = found.value.page.steps.find((known) => known.number === input.step);
+	const missing = listRequiredChecks(step?.statements ?? []).filter(
+		(_check, index) => !input.checks.includes(index)
+	);
+	if (missing.length > 0)
+		return fail('refused', 'Tick these before the step is done, or skip it with a reason.', {
+			reasons: missing
+		});
+	return attempts.update(actor, place.incident, place.attempt, input.revision, {
+		steps: [{ number: input.step, ticked: true }]
+	});
+}
+
+/** Changes an attempt that really follows this runbook. */
+async function change(
+	actor: Actor,
+	place: Place,
+	revision: number,
+	patch: Parameters<typeof attempts.update>[4]
+): Promise<Outcome<Attempt>> {
+	const found = await find(actor, place);
+	return found.ok ? attempts.update(actor, place.incident, place.attempt, revision, patch) : found;
+}
+
+/** Skips a step, with the reason for whoever reads it later. */
+export function skip(
+	actor: Actor,
+	place: Place,
+	input: { step: number; revision: number; reason: string }
+): Promise<Outcome<Attempt>> {
+	return change(actor, place, input.revision, { steps: [{ number: input.step, skipped: input.reason }] });
+}
+
+/** Takes back a tick or a skip. */
+export function takeBack(
+	actor: Actor,
+	place: Place,
+	input: { step: number; revision: number }
+): Promise<Outcome<Attempt>> {
+	return change(actor, place, input.revision, {
+		steps: [{ number: input.step, ticked: false, skipped: null }]
+	});
+}
+
+/** Records what came of it, which ends the attempt. */
+export function conclude(
+	actor: Actor,
+	place: Place,
+	input: { revision: number; outcome: AttemptOutcome; note: string | null; after: number | null }
+): Promise<Outcome<Attempt>> {
+	const { revision, ...patch } = input;
+	return change(actor, place, revision, patch);
+}
+
+/**
+ * Stops in the middle: the log says where and what comes next, and nobody is on the incident any more, so that
+ * it stands first on the Watch. The attempt stays under way for whoever takes it.
+ */
+export async function handOver(
+	actor: Actor,
+	place: Place,
+	input: { incidentRevision: number; note: string }
+): Promise<Outcome<null>> {
+	const found = await find(actor, place);
+	if (!found.ok) return found;
+	const freed = await incidents.update(actor, place.incident, input.incidentRevision, { owner: null });
+	if (!freed.ok) return freed;
+	const { attempt } = found.value;
+	const done = attempt.steps.filter((step) => step.tickedAt !== null || step.skipped !== null).length;
+	const text = `Stopped and handed over after step ${done} of ${attempt.steps.length}.\n\n${input.note}`;
+	const added = await entries.add(actor, place.incident, { text });
+	return added.ok ? ok(null) : added;
+}

@@ -1,0 +1,63 @@
+import { redirect, type RequestEvent } from '@sveltejs/kit';
+import type { z } from 'zod';
+import type { Actor } from '$lib/domain/person/person';
+import type { Outcome } from '$lib/domain/problem';
+import * as follow from '$lib/server/follow/follow-service';
+import { readQuery } from '$lib/server/http/api';
+import { readForm, readTyped } from '$lib/server/http/form';
+import { requireActor } from '$lib/server/http/guard';
+import { failWith, unwrap } from '$lib/server/http/respond';
+import type { Actions, PageServerLoad } from './$types';
+import { concludeForm, followQuery, handOverForm, skipForm, takeBackForm, tickForm } from './follow-input';
+
+type FollowEvent = RequestEvent<{ slug: string }>;
+
+/** The attempt that the address names; an address without one leads to the runbook, where one is started. */
+function readAddress(event: FollowEvent) {
+	const { slug } = event.params;
+	const asked = readQuery(event.url, followQuery);
+	if (!asked.ok) redirect(303, `/runbooks/${slug}`);
+	return { ...asked.value, place: { slug, incident: asked.value.incident, attempt: asked.value.attempt } };
+}
+
+export const load = (async (event) => {
+	const actor = requireActor(event);
+	const { place, step, check } = readAddress(event);
+	const followed = unwrap(await follow.read(actor, place, step ?? null));
+	// Boxes ticked by a browser without JavaScript, which asks for the statement by a form of its own.
+	return { ...followed, actor, checked: check ?? [] };
+}) satisfies PageServerLoad;
+
+/** A form action: reads the form, calls the verb, goes on to the next step that is not done. */
+function act<S extends z.ZodObject>(
+	schema: S,
+	verb: (actor: Actor, place: follow.Place, input: z.output<S>) => Promise<Outcome<unknown>>,
+	goOn: (place: follow.Place) => string = toNextStep
+) {
+	return async (event: FollowEvent) => {
+		const actor = requireActor(event);
+		const { place } = readAddress(event);
+		const form = await event.request.formData();
+		const input = readForm(form, schema);
+		if (!input.ok) return failWith(input.problem, readTyped(form));
+		const done = await verb(actor, place, input.value);
+		if (!done.ok) return failWith(done.problem, readTyped(form));
+		redirect(303, goOn(place));
+	};
+}
+
+function toNextStep({ slug, incident, attempt }: follow.Place): string {
+	return `/runbooks/${slug}/follow?incident=${incident}&attempt=${attempt}`;
+}
+
+export const actions = {
+	tick: act(tickForm, (actor, place, { check, ...input }) =>
+		follow.tick(actor, place, { ...input, checks: check ?? [] })
+	),
+	skip: act(skipForm, follow.skip),
+	takeBack: act(takeBackForm, follow.takeBack),
+	conclude: act(concludeForm, (actor, place, { note, after, ...input }) =>
+		follow.conclude(actor, place, { ...input, note: note ?? null, after: after ?? null })
+	),
+	handOver: act(handOverForm, follow.handOver, ({ incident }) => `/incidents/${incident}`)
+} satisfies Actions;
