@@ -1,11 +1,10 @@
 import type { Person } from '../person/person';
 import type { IncidentState, Severity } from '../incident/incident';
-import type { Operator } from '../reading/operator';
 
 /** Where an incident's evidence overflows, in one line. */
 export interface Overflow {
-	/** The operator of the heaviest spill; null: the evidence holds temporary files but not what wrote them. */
-	operator: Pick<Operator, 'kind' | 'name' | 'relation' | 'condition'> | null;
+	/** "hash join on invoice_no"; null: the evidence holds temporary files but not what wrote them. */
+	where: string | null;
 	/** Bytes written to temporary files; null: the evidence doesn't say. */
 	temporaryBytes: number | null;
 	/** Temporary files; null: no log was read. */

@@ -1,3 +1,4 @@
+import { phraseOperator } from '$lib/domain/reading/operator-phrase';
 import type { Overflow } from '$lib/domain/watch/watch';
 import type { SpillRow } from './watch-store';
 
@@ -10,11 +11,12 @@ export function findOverflow(spills: readonly SpillRow[]): Overflow | null {
 	const log = heaviest(spills, (spill) => spill.logBytes);
 	const temporaryBytes = plan?.planBytes ?? log?.logBytes ?? null;
 	if (temporaryBytes === null) return null;
-	const operator =
-		plan?.kind && plan.name !== null
-			? { kind: plan.kind, name: plan.name, relation: plan.relation, condition: plan.condition }
-			: null;
-	return { operator, temporaryBytes, files: log?.files ?? null };
+	return { where: plan === null ? null : nameOperator(plan), temporaryBytes, files: log?.files ?? null };
+}
+
+function nameOperator({ kind, name, relation, alias, condition }: SpillRow): string | null {
+	if (kind === null || name === null) return null;
+	return phraseOperator({ kind, name, relation, alias, condition, children: [] });
 }
 
 /** The row with the largest figure above 0; null where no row has one. */

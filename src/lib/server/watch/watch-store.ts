@@ -72,6 +72,7 @@ export interface SpillRow {
 	kind: OperatorKind | null;
 	name: string | null;
 	relation: string | null;
+	alias: string | null;
 	condition: string | null;
 }
 
@@ -103,6 +104,7 @@ export async function findSpills(incidents: readonly number[]): Promise<SpillRow
 			json_extract(body, at || '.kind') AS kind,
 			json_extract(body, at || '.name') AS name,
 			json_extract(body, at || '.relation') AS relation,
+			json_extract(body, at || '.alias') AS alias,
 			json_extract(body, at || '.condition') AS condition
 		FROM placed`,
 		{ incidents: [...incidents] }

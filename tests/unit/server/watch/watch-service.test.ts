@@ -150,21 +150,16 @@ describe('overview', () => {
 		await attach(number, makeOverflowingReading());
 		await attach(number, makeLog(65 * MB, 16));
 		expect((await look()).open[0]?.overflow).toEqual({
-			operator: {
-				kind: 'hash-join',
-				name: 'Hash Join',
-				relation: null,
-				condition: '(i.invoice_no = l.invoice_no)'
-			},
+			where: 'hash join on invoice_no',
 			temporaryBytes: 57_671_680 + 11_665_408,
 			files: 16
 		});
 	});
 
-	it('tells of a log alone without an operator', async () => {
+	it('tells of a log alone without saying where', async () => {
 		const number = await makeIncident();
 		await attach(number, makeLog(412 * MB, 3));
-		expect((await look()).open[0]?.overflow).toEqual({ operator: null, temporaryBytes: 412 * MB, files: 3 });
+		expect((await look()).open[0]?.overflow).toEqual({ where: null, temporaryBytes: 412 * MB, files: 3 });
 	});
 
 	it('tells of no overflow where the evidence shows none', async () => {
