@@ -1,0 +1,78 @@
+import { readdir, rm } from 'node:fs/promises';
+import path from 'node:path';
+import { z } from 'zod';
+import { ROLES, SYSTEM, type Role } from '$lib/domain/person/person';
+import { closeDatabase, DATABASE_FILE, openDatabase } from '$lib/server/db/connection';
+import { readSetting, writeSetting } from '$lib/server/db/setting-store';
+import { fillDemo } from '$lib/server/demo/fill-demo';
+import { DEMO_PASSWORD } from '$lib/server/people/demo-password';
+import * as people from '$lib/server/people/people-service';
+
+const MARKER = 'demo';
+const marker = z.object({ state: z.enum(['filling', 'filled']) });
+
+/** A sign-in of the demonstration, for printing. */
+export interface DemoSignIn {
+	role: Role;
+	email: string;
+	password: string;
+}
+
+async function listFiles(folder: string): Promise<string[]> {
+	try {
+		// The lock of the program that is filling it.
+		return (await readdir(folder)).filter((name) => !name.startsWith('server.lock'));
+	} catch (error) {
+		if (error instanceof Error && 'code' in error && error.code === 'ENOENT') return [];
+		throw error;
+	}
+}
+
+/** How far the demonstration in an open folder is; null: it isn't one. */
+async function readMarker(): Promise<'filling' | 'filled' | null> {
+	const parsed = marker.safeParse(await readSetting(MARKER));
+	return parsed.success ? parsed.data.state : null;
+}
+
+async function fill(dataDir: string): Promise<void> {
+	await openDatabase(dataDir);
+	await writeSetting(MARKER, { state: 'filling' });
+	await fillDemo(dataDir);
+	await writeSetting(MARKER, { state: 'filled' });
+}
+
+/**
+ * Leaves an open database with the demonstration in it: fills an empty folder, takes one that carries the
+ * marker as it is, and starts over where filling was cut off. Answers null, with nothing open and nothing
+ * touched, for a folder that holds anything else.
+ */
+export async function prepareDemo(dataDir: string): Promise<'filled' | 'reused' | null> {
+	const files = await listFiles(dataDir);
+	if (files.length > 0) {
+		if (!files.includes(DATABASE_FILE)) return null;
+		await openDatabase(dataDir, { migrate: false });
+		const state = await readMarker();
+		if (state === 'filled') {
+			await openDatabase(dataDir);
+			return 'reused';
+		}
+		await closeDatabase();
+		if (state === null) return null;
+		// Cut off while filling: nothing of anybody's own can be in it yet.
+		for (const name of files) await rm(path.join(dataDir, name), { recursive: true });
+	}
+	await fill(dataDir);
+	return 'filled';
+}
+
+/** A sign-in for each role, the first of its people. */
+export async function listDemoSignIns(): Promise<DemoSignIn[]> {
+	const everybody = await people.list(SYSTEM);
+	if (!everybody.ok) return [];
+	const active = everybody.value.filter((person) => person.deactivatedAt === null);
+	active.sort((a, b) => a.id - b.id);
+	return ROLES.flatMap((role) => {
+		const first = active.find((person) => person.role === role);
+		return first ? [{ role, email: first.email, password: DEMO_PASSWORD }] : [];
+	});
+}
