@@ -1,7 +1,10 @@
 import { maskStatement } from '../../mask-literals';
 import { maskJsonPlan } from '../../masking/mask-json-plan';
 import { maskTextPlan } from '../../masking/mask-text-plan';
+import { maskXmlPlan } from '../../masking/mask-xml-plan';
+import { maskYamlPlan } from '../../masking/mask-yaml-plan';
 import { maskAddresses, maskSecrets } from '../../secrets';
+import { planBodyForm } from './plan-body';
 import { isSqlRecord, readRecordLine, type RecordLine } from './record-line';
 
 /** A record longer than this is masked in parts, so that no file can fill the memory. */
@@ -91,14 +94,13 @@ function maskMessage(record: RecordLine, body: string): string {
 	return maskLogText(body);
 }
 
+const MASKERS = { json: maskJsonPlan, yaml: maskYamlPlan, xml: maskXmlPlan, text: maskTextPlan };
+
 /** The plan that auto_explain put below the line: each line behind a tab. */
 function maskPlanBody(body: string): string | null {
-	const start = body.indexOf('\n');
-	const plan = body.slice(start + 1);
-	if (/^\s*\{/.test(plan)) return body.slice(0, start + 1) + maskJsonPlan(plan);
-	if (/^\s*Query Text:/.test(plan) || /\((?:cost=|actual )/.test(plan))
-		return body.slice(0, start + 1) + maskTextPlan(plan);
-	return null;
+	const start = body.indexOf('\n') + 1;
+	const form = planBodyForm(body.slice(start).replace(/^\t/gm, ''));
+	return form === null ? null : body.slice(0, start) + MASKERS[form](body.slice(start));
 }
 
 /** What a message of the server may quote of the data: values of keys and rows, input, parameters, statements. */
