@@ -1,4 +1,5 @@
 import { wordOf } from '$lib/components/reading/operator-words';
+import type { AttemptOutcome } from '$lib/domain/incident/attempt';
 import type { IncidentState, Severity } from '$lib/domain/incident/incident';
 import { CAUSE_IDS } from '$lib/domain/symptom/symptom';
 
@@ -16,6 +17,14 @@ export const MOVE_VERBS: Record<IncidentState, string> = {
 	contained: 'Contained',
 	resolved: 'Resolved',
 	reviewed: 'Reviewed'
+};
+
+/** How an attempt ended, in words. */
+export const OUTCOME_WORDS: Record<AttemptOutcome, string> = {
+	worked: 'worked',
+	partly: 'worked partly',
+	'no-effect': 'no effect',
+	'made-worse': 'made it worse'
 };
 
 /** A cause as words: an id of the catalogue, or the text that somebody wrote. */
