@@ -1,10 +1,5 @@
-import { maskStatement } from '../../mask-literals';
-import { maskJsonPlan } from '../../masking/mask-json-plan';
-import { maskTextPlan } from '../../masking/mask-text-plan';
-import { maskXmlPlan } from '../../masking/mask-xml-plan';
-import { maskYamlPlan } from '../../masking/mask-yaml-plan';
-import { maskAddresses, maskSecrets } from '../../secrets';
-import { planBodyForm } from './plan-body';
+import { maskAddresses } from '../../secrets';
+import { maskLogMessage, maskLogText, maskSql } from './message-mask';
 import { isSqlRecord, readRecordLine, type RecordLine } from './record-line';
 
 /** A record longer than this is masked in parts, so that no file can fill the memory. */
@@ -73,51 +68,6 @@ export class LogMasker {
 	}
 }
 
-const TEMPORARY_FILE = /^[^"'\u00ab\u201c\u300c]*pgsql_tmp/;
-const DURATION = /^\S+: [\d.,]+ ms {2}/;
-const STATEMENT_HEAD =
-	/^(?:(?:\S+: [\d.,]+ ms {2})?(?:statement|execute [^:]*|parse [^:]*|bind [^:]*|fetch from [^:]*|[\p{L}]+(?: [^:"']{1,80})?)): /u;
-const SQL_VERB =
-	/^\s*(?:select|with|insert|update|delete|merge|values|execute|prepare|table|create|alter|drop|refresh|declare|fetch|copy|call|do|explain|set|begin|commit|analyze|vacuum|reindex|cluster|truncate|grant|revoke|lock)\b/i;
-
 function maskMessage(record: RecordLine, body: string): string {
-	if (TEMPORARY_FILE.test(record.message) || record.message.includes('pgsql_tmp/')) return body;
-	if (isSqlRecord(record) || SQL_VERB.test(body)) return maskSecrets(maskStatement(body));
-	if (DURATION.test(body) && body.includes('\n')) {
-		const plan = maskPlanBody(body);
-		if (plan !== null) return plan;
-	}
-	const head = STATEMENT_HEAD.exec(body)?.[0];
-	if (head !== undefined && SQL_VERB.test(body.slice(head.length))) {
-		return maskSecrets(head + maskStatement(body.slice(head.length)));
-	}
-	return maskLogText(body);
-}
-
-const MASKERS = { json: maskJsonPlan, yaml: maskYamlPlan, xml: maskXmlPlan, text: maskTextPlan };
-
-/** The plan that auto_explain put below the line: each line behind a tab. */
-function maskPlanBody(body: string): string | null {
-	const start = body.indexOf('\n') + 1;
-	const form = planBodyForm(body.slice(start).replace(/^\t/gm, ''));
-	return form === null ? null : body.slice(0, start) + MASKERS[form](body.slice(start));
-}
-
-/** What a message of the server may quote of the data: values of keys and rows, input, parameters, statements. */
-export function maskLogText(text: string): string {
-	if (!/['"=(]/.test(text)) return maskSecrets(text);
-	return maskSecrets(
-		text
-			.replace(/'(?:[^'\n]|'')*'/g, '?')
-			.replace(/\)=\(.*\)/g, ')=(?)')
-			.replace(/(\bcontains )\(.*\)/g, '$1(?)')
-			.replace(/(: |\bvalue |\bstring )"(?:[^"\n]|"")*"/g, '$1"?"')
-			.replace(
-				/(SQL statement )"([^]*)"/g,
-				(_all, head: string, sql: string) => `${head}"${maskStatement(sql)}"`
-			)
-			.replace(/^(\s*Process \d+: )(.*)$/gm, (all, head: string, sql: string) =>
-				SQL_VERB.test(sql) ? head + maskStatement(sql) : all
-			)
-	);
+	return isSqlRecord(record) ? maskSql(body) : maskLogMessage(body);
 }

@@ -1,10 +1,9 @@
 import type { FormatResult } from '../../reading';
 import { LogAccount } from './log-account';
+import { takeWords } from './log-event';
 import { readPrefix } from './log-prefix';
 import { isStatementRecord, readRecordLine, type RecordLine } from './record-line';
 
-/** A message that is a statement with words before it. */
-export const LOGGED_STATEMENT = /^(\S+: [\d.,]+ ms {2})?(?:statement|execute [^:]*): ([^]*)$/;
 const VERB =
 	/^\s*(?:select|with|insert|update|delete|merge|execute|create|explain|declare|fetch|refresh|copy|call)\b/i;
 /** A record this long is a plan or a statement; what comes behind is left out of it. */
@@ -63,11 +62,8 @@ export class LogReader {
 	}
 
 	private takeOther(record: RecordLine, body: string[]): void {
-		const { message } = record;
-		if (message.includes('temp_file_limit')) this.account.takeFileLimit();
-		const logged = message.includes(': ') ? LOGGED_STATEMENT.exec(whole(message, body)) : null;
-		if (logged === null) this.account.takeVersion(message);
-		else this.account.takeLogged(readPrefix(record.prefix).pid, logged[2] ?? '', logged[1] !== undefined);
+		if (record.message.includes('temp_file_limit')) this.account.takeFileLimit();
+		else takeWords(this.account, whole(record.message, body), readPrefix(record.prefix).pid);
 	}
 }
 
