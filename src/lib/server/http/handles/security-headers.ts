@@ -19,9 +19,10 @@ const CLOSED_POLICY = "default-src 'none'; frame-ancestors 'none'; sandbox";
 
 /**
  * Lets the editor's own style element in by the page's nonce. Kit adds the nonce to style-src only where the
- * page itself has an inline style.
+ * page itself has an inline style. In development it allows every inline style, which a nonce would take back.
  */
 function addStyleNonce(policy: string): string {
+	if (/style-src [^;]*'unsafe-inline'/.test(policy)) return policy;
 	const nonce = /'nonce-[^']+'/.exec(policy)?.[0];
 	return nonce ? policy.replace(/style-src (?!.*nonce)([^;]*)/, `style-src $1 ${nonce}`) : policy;
 }
