@@ -1,6 +1,7 @@
 import type { Cause, OperatorSizing, Plan, Spills, Symptom, Trail } from '../reading/reading';
 import { findTrails } from '../reading/drift-trail';
 import { findCauses } from './find-causes';
+import { sizeOperators } from './size-operators';
 import { findSymptoms } from './find-symptoms';
 import { toPlanTree } from './plan-tree';
 
@@ -16,5 +17,10 @@ export interface Interpretation {
 export function interpretPlan(plan: Plan, spills: Spills | null): Interpretation {
 	const tree = toPlanTree(plan.root);
 	const symptoms = findSymptoms({ plan, tree, spills });
-	return { symptoms, trails: findTrails(tree), causes: findCauses(plan, tree, symptoms), sizing: [] };
+	return {
+		symptoms,
+		trails: findTrails(tree),
+		causes: findCauses(plan, tree, symptoms),
+		sizing: sizeOperators(plan, tree)
+	};
 }
