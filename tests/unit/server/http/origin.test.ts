@@ -76,6 +76,11 @@ describe('checkOrigin, with a token', () => {
 		expect(response.status).toBe(415);
 	});
 
+	it('answers an unknown call with 404', async () => {
+		const headers = { authorization: `Bearer ${await tokenOfReader()}` };
+		expect((await request('GET', '/api/v1/nothing-of-the-kind', { headers })).status).toBe(404);
+	});
+
 	it('never falls back on the cookie beside it', async () => {
 		const headers = { cookie: await cookieOfReader(), origin: ORIGIN, authorization: 'Bearer cw_unknown' };
 		expect((await request('POST', '/api/v1/sizing', { headers, body: SIZING })).status).toBe(401);

@@ -1,13 +1,16 @@
 import type { Handle } from '@sveltejs/kit';
 import { countTokenGuess, tokenWaitSeconds } from '$lib/server/people/sign-in-limits';
 import * as tokens from '$lib/server/sessions/tokens-service';
+import { isApiPath } from '../api-path';
 import { readBearer } from '../credentials';
 import { refuse } from '../refuse';
 
 /** Sets the actor by `Authorization: Bearer cw_…`, on API routes alone: pages are for people. */
 export const readToken: Handle = async ({ event, resolve }) => {
 	const bearer = readBearer(event.request);
-	if (bearer === null || !event.route.id?.startsWith('/api/')) return resolve(event);
+	// An API address without a route opens nothing: who holds a token is told so by a 404.
+	const isForPrograms = event.route.id?.startsWith('/api/') ?? isApiPath(event.url);
+	if (bearer === null || !isForPrograms) return resolve(event);
 	const address = event.getClientAddress();
 	const waitSeconds = await tokenWaitSeconds(address);
 	if (waitSeconds !== null) {
