@@ -1,8 +1,11 @@
 import { building } from '$app/environment';
 import { config, ConfigError, type Config } from './config';
 import { closeDatabase, openDatabase } from './db/connection';
+import { leaveReadings } from './evidence/late-reading';
+import { recoverEvidence } from './evidence/recover-evidence';
 import { releaseRunningKeys } from './http/idempotency-store';
 import { log } from './log';
+import { closePool, warmUp } from './readings/reading-pool';
 import { adoptContent } from './runbooks/adopt-content';
 import { startSearch } from './search/start-search';
 import { readSecretKey } from './secret-key';
@@ -21,6 +24,13 @@ function requireConfig(): Config {
 	}
 }
 
+/** Ends what is under way: readings that outlasted their request are taken up at the next start. */
+async function stopServer(): Promise<void> {
+	leaveReadings();
+	await closePool();
+	await closeDatabase();
+}
+
 /** Opens the data folder before the first request, and closes it after the last. */
 export async function startServer(): Promise<void> {
 	if (building) return;
@@ -30,6 +40,8 @@ export async function startServer(): Promise<void> {
 	await releaseRunningKeys();
 	await adoptContent();
 	startSearch();
+	warmUp();
+	await recoverEvidence();
 	const tidying = setInterval(() => {
 		sessions.deleteExpired().catch((error: unknown) => log().error({ err: error }, 'tidying failed'));
 	}, TIDY_EVERY_MS);
@@ -37,6 +49,6 @@ export async function startServer(): Promise<void> {
 	// The adapter's event, after the last answer was sent.
 	process.once('sveltekit:shutdown', () => {
 		clearInterval(tidying);
-		closeDatabase().catch((error: unknown) => log().error({ err: error }, 'closing failed'));
+		stopServer().catch((error: unknown) => log().error({ err: error }, 'stopping failed'));
 	});
 }

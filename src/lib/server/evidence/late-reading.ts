@@ -76,23 +76,35 @@ async function keepReading(evidenceId: number, read: ReadUpload): Promise<void> 
 	}
 }
 
+let isStopping = false;
+
+/**
+ * Leaves the readings under way to the next start, which finds their raw bytes in the spool. Called before
+ * the workers are stopped: what they give up then has not failed.
+ */
+export function leaveReadings(): void {
+	isStopping = true;
+}
+
 async function finish(evidenceId: number, reading: Promise<ReadUpload>, rawPath: string): Promise<void> {
 	try {
 		await keepReading(evidenceId, await reading);
 	} catch (error) {
-		log().error({ error, evidenceId }, 'evidence could not be read');
+		if (isStopping) return;
+		log().error({ err: error, evidenceId }, 'evidence could not be read');
 		const row = await findEvidenceById(evidenceId);
 		if (row !== null)
 			await markFailed(row, 'Reading it failed. Attach it again; if it fails again, cut it shorter.');
 	} finally {
-		await removeFromSpool([rawPath, waitingPath(evidenceId)]);
+		// Left behind while stopping: the next start reads on from it, or empties the spool of it.
+		if (!isStopping) await removeFromSpool([rawPath, waitingPath(evidenceId)]);
 	}
 }
 
 /** Lets a reading end in the background and keeps what it comes to. Never rejects. */
 export function finishLater(evidenceId: number, reading: Promise<ReadUpload>, rawPath: string): void {
 	const task = finish(evidenceId, reading, rawPath).catch((error: unknown) => {
-		log().error({ error, evidenceId }, 'late evidence could not be settled');
+		log().error({ err: error, evidenceId }, 'late evidence could not be settled');
 	});
 	underWay.add(task);
 	void task.finally(() => underWay.delete(task));

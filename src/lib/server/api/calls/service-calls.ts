@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import type { Call } from '../call';
+import { watchShape } from '../shapes/watch';
 
 /** What programs ask of the server itself. */
 export const SERVICE_CALLS: readonly Call[] = [
@@ -20,6 +21,14 @@ export const SERVICE_CALLS: readonly Call[] = [
 				index: z.object({ documents: z.int(), behind: z.int() })
 			})
 		}
+	},
+	{
+		method: 'get',
+		path: '/watch',
+		id: 'readWatch',
+		summary: 'What needs a person now',
+		group: 'watch',
+		answer: { status: 200, what: 'The figures behind the Watch.', shape: watchShape }
 	},
 	{
 		method: 'get',

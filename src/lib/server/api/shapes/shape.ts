@@ -7,8 +7,8 @@ export const SHAPES = new Map<string, z.ZodType>();
 type Exactly<T, S extends z.ZodType> = [z.output<S>] extends [T]
 	? [T] extends [z.output<S>]
 		? unknown
-		: { 'the schema lacks what the type allows': never }
-	: { 'the schema allows what the type lacks': never };
+		: { 'the schema refuses what the type allows': never }
+	: { 'what the schema allows is not of the type': never };
 
 /**
  * The schema of an answer's type: `shapeOf<Person>()('Person', z.object({ … }))`. It compiles only where the

@@ -1,12 +1,12 @@
 import { precedentQuery } from '$lib/domain/precedent/precedent-input';
 import { ok } from '$lib/domain/problem';
 import { receiveDraft } from '$lib/server/api/receive-draft';
+import { readOnce } from '$lib/server/evidence/read-once';
 import { readQuery } from '$lib/server/http/api';
 import { requireActor } from '$lib/server/http/guard';
 import { idempotent } from '$lib/server/http/idempotency';
 import { respond, respondItems } from '$lib/server/http/respond';
 import * as precedents from '$lib/server/precedents/precedents-service';
-import * as readings from '$lib/server/readings/readings-service';
 import type { RequestHandler } from './$types';
 
 export const POST = ((event) =>
@@ -17,7 +17,7 @@ export const POST = ((event) =>
 		const received = await receiveDraft(event);
 		if (!received.ok) return respond(received);
 		const { draft, uploads } = received.value;
-		const read = uploads.length === 0 ? ok([]) : await readings.read(actor, uploads);
+		const read = uploads.length === 0 ? ok([]) : await readOnce(actor, uploads);
 		if (!read.ok) return respond(read);
 		return respondItems(
 			await precedents.forDraft(actor, { ...draft, readings: read.value }, query.value.limit)
