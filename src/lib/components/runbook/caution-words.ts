@@ -34,14 +34,21 @@ export interface CautionFact {
 
 /** Everything a caution says of its statement, in the order in which one needs it; empty texts are left out. */
 export function listFacts(caution: Caution): CautionFact[] {
+	const { reads, writes, schemaChanges } = caution.blocks;
+	const isNoticed = caution.locks.length > 0 || reads || writes || schemaChanges;
 	const facts: CautionFact[] = [
-		{ name: 'lock', text: sayLocks(caution.locks) ?? 'none that others notice' },
+		{ name: 'lock', text: isNoticed ? (sayLocks(caution.locks) ?? 'none') : '' },
 		{ name: 'others', text: sayWhoWaits(caution.blocks) },
 		{ name: 'load', text: caution.load },
 		{ name: 'rewrites', text: caution.rewrites ? 'writes the whole table anew' : '' },
-		{ name: 'cancelled', text: caution.cancel },
-		{ name: 'undo', text: caution.undo },
+		{ name: 'cancelled', text: leaveNothing(caution.cancel) },
+		{ name: 'undo', text: leaveNothing(caution.undo) },
 		{ name: 'transaction', text: caution.inTransaction ? '' : "can't run inside a transaction block" }
 	];
 	return facts.filter((fact) => fact.text.trim() !== '');
+}
+
+/** Empty for a text that says no more than that there is nothing. */
+function leaveNothing(text: string): string {
+	return /^nothing( to undo|: it only reads)?\.?$/i.test(text.trim()) ? '' : text;
 }

@@ -30,14 +30,27 @@ async function find(actor: Actor, place: Place): Promise<Outcome<Followed>> {
 	return page.ok ? ok({ attempt: attempt.value, page: page.value }) : page;
 }
 
-/** One step to be done, with everything that the checklist shows round it. */
+/** Instead of a step: what came of it. No step has this number. */
+export const CONCLUDE = 0;
+
+/** The first step that is neither ticked nor skipped; CONCLUDE: there is none. */
+function findNext(attempt: Attempt): number {
+	return (
+		attempt.steps.find((step) => step.tickedAt === null && step.skipped === null)?.number ?? CONCLUDE
+	);
+}
+
+/**
+ * One step to be done, with everything that the checklist shows round it: the one that is `wanted`, else the
+ * first that is not done. CONCLUDE wants none.
+ */
 export async function read(actor: Actor, place: Place, wanted: number | null) {
 	const [found, incident] = await Promise.all([find(actor, place), incidents.read(actor, place.incident)]);
 	if (!found.ok) return found;
 	if (!incident.ok) return incident;
 	const { attempt, page } = found.value;
 	const { number, title, revision, evidence } = incident.value;
-	const next = attempt.steps.find((step) => step.tickedAt === null && step.skipped === null)?.number;
+	const next = attempt.outcome === null ? findNext(attempt) : CONCLUDE;
 	const current = page.steps.find((step) => step.number === (wanted ?? next)) ?? null;
 	const { slug, state } = page.runbook;
 	return ok({
@@ -46,7 +59,7 @@ export async function read(actor: Actor, place: Place, wanted: number | null) {
 		evidence: evidence.map(({ id, name }) => ({ id, name })),
 		runbook: { slug, title: page.runbook.title, state },
 		steps: page.steps.map((step) => ({ number: step.number, title: step.title })),
-		/** null: every step is ticked or skipped. */
+		/** null: the outcome is asked for, or stands. */
 		current,
 		/** What has to be ticked before the statements of the step may be copied. */
 		checks: current === null ? [] : listRequiredChecks(current.statements)

@@ -42,8 +42,9 @@ describe('listFacts', () => {
 		]);
 	});
 
-	it('says that no lock is taken rather than nothing', () => {
-		const facts = listFacts({ ...caution, locks: [], lock: null });
-		expect(facts[0]).toEqual({ name: 'lock', text: 'none that others notice' });
+	it('leaves out the lock that nobody notices and the cancelling that leaves nothing', () => {
+		const blocks = { reads: false, writes: false, schemaChanges: false };
+		const facts = listFacts({ ...caution, locks: [], lock: null, blocks, cancel: 'Nothing.' });
+		expect(facts.map((fact) => fact.name)).toEqual(['others', 'load', 'transaction']);
 	});
 });

@@ -22,8 +22,9 @@ function readAddress(event: FollowEvent) {
 
 export const load = (async (event) => {
 	const actor = requireActor(event);
-	const { place, step, check } = readAddress(event);
-	const followed = unwrap(await follow.read(actor, place, step ?? null));
+	const { place, step, conclude, check } = readAddress(event);
+	const wanted = conclude === true ? follow.CONCLUDE : (step ?? null);
+	const followed = unwrap(await follow.read(actor, place, wanted));
 	// Boxes ticked by a browser without JavaScript, which asks for the statement by a form of its own.
 	return { ...followed, actor, checked: check ?? [] };
 }) satisfies PageServerLoad;

@@ -8,6 +8,8 @@ export const followQuery = z.object({
 	incident: whole,
 	attempt: whole,
 	step: whole.optional(),
+	/** Asks for the outcome before every step is done. */
+	conclude: z.boolean().optional(),
 	check: z.array(z.number().int().min(0)).max(50).optional()
 });
 
