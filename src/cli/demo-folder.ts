@@ -28,6 +28,12 @@ async function listFiles(folder: string): Promise<string[]> {
 	}
 }
 
+/** Whether a folder holds anything without being a Catchwater's. */
+export async function isForeign(dataDir: string): Promise<boolean> {
+	const files = await listFiles(dataDir);
+	return files.length > 0 && !files.includes(DATABASE_FILE);
+}
+
 /** How far the demonstration in an open folder is; null: it isn't one. */
 async function readMarker(): Promise<'filling' | 'filled' | null> {
 	const parsed = marker.safeParse(await readSetting(MARKER));
@@ -47,9 +53,9 @@ async function fill(dataDir: string): Promise<void> {
  * touched, for a folder that holds anything else.
  */
 export async function prepareDemo(dataDir: string): Promise<'filled' | 'reused' | null> {
+	if (await isForeign(dataDir)) return null;
 	const files = await listFiles(dataDir);
 	if (files.length > 0) {
-		if (!files.includes(DATABASE_FILE)) return null;
 		await openDatabase(dataDir, { migrate: false });
 		const state = await readMarker();
 		if (state === 'filled') {

@@ -11,7 +11,7 @@ import {
 } from '$lib/server/config';
 import { closeDatabase } from '$lib/server/db/connection';
 import { lockFolder } from '$lib/server/db/folder-lock';
-import { listDemoSignIns, prepareDemo } from './demo-folder';
+import { isForeign, listDemoSignIns, prepareDemo } from './demo-folder';
 import { readArgs, UsageError } from './verb';
 
 const HELP = `Usage: npm start [-- --demo]
@@ -36,14 +36,16 @@ function requireFreePort({ host, port }: Config): Promise<void> {
 	});
 }
 
+function refuseFolder({ dataDir }: Config): string {
+	return `DATA_DIR: ${dataDir} holds something other than the demonstration.`;
+}
+
 /** Fills or takes the demonstration; answers the lines that tell how to sign in. */
 async function prepare(settings: Config): Promise<string[]> {
 	console.log(`Demonstration in ${settings.dataDir}: a moment, please …`);
 	overrideConfig({ logLevel: 'silent' });
 	const result = await prepareDemo(settings.dataDir);
-	if (result === null) {
-		throw new StartError(`DATA_DIR: ${settings.dataDir} holds something other than the demonstration.`);
-	}
+	if (result === null) throw new StartError(refuseFolder(settings));
 	const signIns = await listDemoSignIns();
 	await closeDatabase();
 	if (!isLoopback(settings.host)) {
@@ -66,6 +68,8 @@ async function serve(args: string[]): Promise<void> {
 	if (!existsSync(fileURLToPath(server)))
 		throw new StartError('Nothing is built yet: run "npm run build" first.');
 	await requireFreePort(settings);
+	// Before the lock, which would leave a file in somebody else's folder.
+	if (values.demo && (await isForeign(settings.dataDir))) throw new StartError(refuseFolder(settings));
 	const lock = await lockFolder(settings.dataDir);
 	if (!lock) throw new StartError(`DATA_DIR: another Catchwater runs on ${settings.dataDir}.`);
 	const lines = values.demo ? await prepare(settings) : [];
