@@ -59,6 +59,8 @@ export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
 	'/api/v1/runbooks': { GET: 'runbook.read' },
 	'/api/v1/runbooks/[slug]': { GET: 'runbook.read' },
 	'/api/v1/sizing': { POST: 'reading.make' },
+	'/api/v1/symptoms': { GET: 'symptom.read' },
+	'/api/v1/symptoms/[id]': { GET: 'symptom.read' },
 	'/api/v1/watch': { GET: 'watch.read' }
 };
 

@@ -4,6 +4,7 @@ import { FINDING_CALLS } from './finding-calls';
 import { INCIDENT_CALLS } from './incident-calls';
 import { RUNBOOK_CALLS } from './runbook-calls';
 import { SERVICE_CALLS } from './service-calls';
+import { SYMPTOM_CALLS } from './symptom-calls';
 
 /** Every call of the API, as the document lists them. A route without its line here fails a test. */
 export const CALLS: readonly Call[] = [
@@ -11,5 +12,6 @@ export const CALLS: readonly Call[] = [
 	...EVIDENCE_CALLS,
 	...FINDING_CALLS,
 	...INCIDENT_CALLS,
-	...RUNBOOK_CALLS
+	...RUNBOOK_CALLS,
+	...SYMPTOM_CALLS
 ];

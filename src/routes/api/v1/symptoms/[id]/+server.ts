@@ -1,0 +1,7 @@
+import { requireActor } from '$lib/server/http/guard';
+import { respond } from '$lib/server/http/respond';
+import * as symptoms from '$lib/server/symptoms/symptoms-service';
+import type { RequestHandler } from './$types';
+
+export const GET = (async (event) =>
+	respond(await symptoms.read(requireActor(event), event.params.id))) satisfies RequestHandler;
