@@ -4,11 +4,12 @@ import { LEAST_PAIRS, LEAST_SIDE } from '../rules/full-join';
 import { LEAST_REMOVED, LEAST_REMOVED_SHARE } from '../rules/function-on-column';
 import { LEAST_FETCHES, LEAST_FETCH_SHARE } from '../rules/heap-fetches-high';
 import { LEAST_INDEX_RUNS, LEAST_OUTER_ERROR, LEAST_RUNS, LEAST_TOUCHED } from '../rules/repeated-inner-scan';
+import type { SymptomId } from '../symptom';
 import type { SymptomDefinition } from './definition';
 
 /** Symptoms of how rows are found. */
-export const ACCESS_SYMPTOMS = [
-	{
+export const ACCESS_SYMPTOMS = {
+	'repeated-inner-scan': {
 		id: 'repeated-inner-scan',
 		title: 'Inner side read again and again',
 		what: 'For every row of one input the other is read once more: in full where it has no index, or by an index lookup that was foreseen for a handful of rows and ran tens of thousands of times.',
@@ -22,7 +23,7 @@ export const ACCESS_SYMPTOMS = [
 			'generic-plan'
 		]
 	},
-	{
+	'lookup-past-tipping-point': {
 		id: 'lookup-past-tipping-point',
 		title: 'Too many single lookups',
 		what: 'Rows are fetched one by one through an index that does not hold all columns. From about a quarter to a third of the table’s pages on, expressed in rows, one scan of the whole table is cheaper.',
@@ -30,7 +31,7 @@ export const ACCESS_SYMPTOMS = [
 		thresholds: [],
 		usualCauses: ['stale-statistics', 'nested-loop-by-misestimate', 'generic-plan']
 	},
-	{
+	'filter-discards-most': {
 		id: 'filter-discards-most',
 		title: 'Nearly everything read is thrown away',
 		what: 'A scan read many rows and its condition kept one in a hundred or fewer. An index that leads to those rows would have read next to nothing.',
@@ -38,7 +39,7 @@ export const ACCESS_SYMPTOMS = [
 		thresholds: [LEAST_READ, LEAST_DISCARDED_SHARE, MOST_LOOPS_SUMMED],
 		usualCauses: ['missing-index', 'condition-not-indexable', 'generic-plan']
 	},
-	{
+	'function-on-column': {
 		id: 'function-on-column',
 		title: 'Condition wraps the column',
 		what: 'The condition compares a function of the column, a cast of it or a sum with it. An index on the bare column can’t serve that, and there are no statistics of the expression, so the estimate is a guess.',
@@ -47,7 +48,7 @@ export const ACCESS_SYMPTOMS = [
 		thresholds: [LEAST_REMOVED, LEAST_REMOVED_SHARE],
 		usualCauses: ['condition-not-indexable']
 	},
-	{
+	'full-join': {
 		id: 'full-join',
 		title: 'Join without a key',
 		what: 'Every row of one table is compared with every row of another: there is no index for the join, or no condition at all.',
@@ -56,7 +57,7 @@ export const ACCESS_SYMPTOMS = [
 		thresholds: [LEAST_PAIRS, LEAST_SIDE],
 		usualCauses: ['join-without-index', 'missing-index']
 	},
-	{
+	'heap-fetches-high': {
 		id: 'heap-fetches-high',
 		title: 'Index-only scan that visits the table',
 		what: 'An index-only scan may skip the table where the visibility map says that a page is visible to everybody. After many changes without a vacuum it says so of hardly any page.',
@@ -64,7 +65,7 @@ export const ACCESS_SYMPTOMS = [
 		thresholds: [LEAST_FETCHES, LEAST_FETCH_SHARE],
 		usualCauses: ['stale-visibility-map']
 	},
-	{
+	'deep-offset': {
 		id: 'deep-offset',
 		title: 'Deep offset',
 		what: 'To skip a hundred thousand rows the server has to make them first. Each page costs more than the one before, and a sort under it holds offset plus limit.',
@@ -72,7 +73,7 @@ export const ACCESS_SYMPTOMS = [
 		thresholds: [LEAST_BROUGHT, MOST_RETURNED_SHARE],
 		usualCauses: ['deep-offset', 'missing-index']
 	},
-	{
+	'missing-index-reported': {
 		id: 'missing-index-reported',
 		title: 'The plan suggests an index',
 		what: 'The engine names an index that it would have liked. It knows this statement only: not what the index costs on every write, nor whether another one nearly serves. A hint to weigh, no command.',
@@ -80,4 +81,4 @@ export const ACCESS_SYMPTOMS = [
 		thresholds: [],
 		usualCauses: ['missing-index']
 	}
-] as const satisfies readonly SymptomDefinition[];
+} satisfies Partial<Record<SymptomId, SymptomDefinition>>;

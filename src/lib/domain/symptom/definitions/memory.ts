@@ -5,11 +5,12 @@ import { MOST_BATCHES } from '../rules/hash-spill';
 import { MOST_STORED_BLOCKS } from '../rules/materialize-spill';
 import { LEAST_DOUBLING, LEAST_OVERRUN } from '../rules/skewed-hash';
 import { MOST_SORT_FILES } from '../rules/sort-spill';
+import type { SymptomId } from '../symptom';
 import type { SymptomDefinition } from './definition';
 
 /** Symptoms of memory that did not suffice. */
-export const MEMORY_SYMPTOMS = [
-	{
+export const MEMORY_SYMPTOMS = {
+	'hash-spill': {
 		id: 'hash-spill',
 		title: 'Hash table spilled',
 		what: 'A hash join builds a table of its smaller input. When the table does not fit into its memory it is split into batches: one stays, the others go to temporary files with the matching rows of the other input, and are read again one by one. Planned means that the planner knew; grown means that it found out while building.',
@@ -24,7 +25,7 @@ export const MEMORY_SYMPTOMS = [
 			'skewed-join-key'
 		]
 	},
-	{
+	'sort-spill': {
 		id: 'sort-spill',
 		title: 'Sort went to disk',
 		what: 'A sort that outgrows its memory writes sorted runs to temporary files and merges them. On disk the rows take about half of what they would need in memory, so the size on disk is never the setting that helps.',
@@ -39,7 +40,7 @@ export const MEMORY_SYMPTOMS = [
 			'nested-loop-by-misestimate'
 		]
 	},
-	{
+	'aggregate-spill': {
 		id: 'aggregate-spill',
 		title: 'Hash aggregate spilled',
 		what: 'A hash aggregate keeps one entry for each group. Once its memory is full, input rows of groups that it does not hold yet go to files and are worked off in further batches, which may spill again.',
@@ -48,7 +49,7 @@ export const MEMORY_SYMPTOMS = [
 		thresholds: [MOST_AGGREGATE_BATCHES],
 		usualCauses: ['misjudged-distinct-count', 'undersized-memory', 'stale-statistics']
 	},
-	{
+	'materialize-spill': {
 		id: 'materialize-spill',
 		title: 'Stored rows went to disk',
 		what: 'Rows that are kept aside to be read again (a WITH query, the frame of a window, a materialised input, the result of a function) did not fit into memory.',
@@ -57,7 +58,7 @@ export const MEMORY_SYMPTOMS = [
 		thresholds: [MOST_STORED_BLOCKS],
 		usualCauses: ['undersized-memory', 'join-without-index']
 	},
-	{
+	'temp-table-on-disk': {
 		id: 'temp-table-on-disk',
 		title: 'Internal temporary table on disk',
 		what: 'The engine groups or removes duplicates in a temporary table of its own. When that outgrows its limit it is turned into a table on disk and carries on there, with a lookup for every row.',
@@ -65,7 +66,7 @@ export const MEMORY_SYMPTOMS = [
 		thresholds: [],
 		usualCauses: ['temp-table-limits', 'undersized-memory']
 	},
-	{
+	'skewed-hash': {
 		id: 'skewed-hash',
 		title: 'Hash table that cannot be split',
 		what: 'Rows with the same key always land in the same batch. Where a few keys (or NULL) hold most rows, the batches double again and again without making the largest one smaller, and the table stays above its limit.',
@@ -74,7 +75,7 @@ export const MEMORY_SYMPTOMS = [
 		thresholds: [LEAST_OVERRUN, LEAST_DOUBLING],
 		usualCauses: ['skewed-join-key', 'stale-statistics']
 	},
-	{
+	'build-side-larger': {
 		id: 'build-side-larger',
 		title: 'The larger side was hashed',
 		what: 'A hash join pays for the rows that it hashes. Here that was the side with several times as many rows as the other: it was expected to be small, or there was no index to look the few up with.',
@@ -82,7 +83,7 @@ export const MEMORY_SYMPTOMS = [
 		thresholds: [LEAST_BUILD_RATIO, LEAST_BUILD_ROWS],
 		usualCauses: ['wrong-build-side', 'missing-index', 'stale-statistics', 'misjudged-distinct-count']
 	},
-	{
+	'bitmap-lossy': {
 		id: 'bitmap-lossy',
 		title: 'Bitmap became lossy',
 		what: 'A bitmap that outgrows its memory forgets single rows and remembers whole blocks. Every row of those blocks is read and checked again.',
@@ -91,7 +92,7 @@ export const MEMORY_SYMPTOMS = [
 		thresholds: [MOST_LOSSY_BLOCKS],
 		usualCauses: ['undersized-memory']
 	},
-	{
+	'grant-too-small': {
 		id: 'grant-too-small',
 		title: 'Memory grant too small',
 		what: 'Engines that grant memory before a statement starts size the grant by the estimate. This one was smaller than what was needed.',
@@ -99,7 +100,7 @@ export const MEMORY_SYMPTOMS = [
 		thresholds: [],
 		usualCauses: ['stale-statistics', 'correlated-predicates']
 	},
-	{
+	'grant-unused': {
 		id: 'grant-unused',
 		title: 'Memory grant mostly unused',
 		what: 'The statement was given many times what it used. While it ran, others waited for that memory.',
@@ -107,7 +108,7 @@ export const MEMORY_SYMPTOMS = [
 		thresholds: [],
 		usualCauses: ['stale-statistics', 'misjudged-distinct-count']
 	},
-	{
+	'grant-wait': {
 		id: 'grant-wait',
 		title: 'Waited for a memory grant',
 		what: 'The statement stood in the queue for memory before it could start. What held the memory is seldom in its own plan.',
@@ -115,4 +116,4 @@ export const MEMORY_SYMPTOMS = [
 		thresholds: [],
 		usualCauses: ['undersized-memory']
 	}
-] as const satisfies readonly SymptomDefinition[];
+} satisfies Partial<Record<SymptomId, SymptomDefinition>>;
