@@ -11,11 +11,11 @@ import * as people from '$lib/server/people/people-service';
 import * as precedents from '$lib/server/precedents/precedents-service';
 import * as runbooks from '$lib/server/runbooks/runbooks-service';
 import type { Actions, PageServerLoad } from './$types';
-import { attemptActions } from './attempt-actions';
+import { attemptActions } from './attempt-actions.server';
 import { drawEvidence } from './draw-evidence';
-import { logActions } from './log-actions';
-import { readNumber } from './run-action';
-import { stateActions } from './state-actions';
+import { logActions } from './log-actions.server';
+import { readNumber } from './run-action.server';
+import { stateActions } from './state-actions.server';
 
 const PRECEDENTS = 5;
 

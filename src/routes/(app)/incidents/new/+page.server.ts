@@ -5,7 +5,7 @@ import { requireActor } from '$lib/server/http/guard';
 import { failWith, unwrap } from '$lib/server/http/respond';
 import * as incidents from '$lib/server/incidents/incidents-service';
 import type { Actions, PageServerLoad } from './$types';
-import { readIncidentForm } from '../read-incident-form';
+import { readIncidentForm } from '../read-incident-form.server';
 
 export const load = (async (event) => {
 	const services = unwrap(await incidents.services(requireActor(event)));

@@ -1,9 +1,9 @@
 import type { IncidentSummary } from '$lib/domain/incident/incident';
 import { isZone } from '$lib/domain/incident/local-time';
 import * as incidents from '$lib/server/incidents/incidents-service';
-import { readIncidentPatch } from '../read-incident-form';
+import { readIncidentPatch } from '../read-incident-form.server';
 import { differences, toEditValues } from './edit-values';
-import { formAction, readId } from './run-action';
+import { formAction, readId } from './run-action.server';
 
 /**
  * The form without the fields that say what stands there already: a time's field holds minutes only and would cut

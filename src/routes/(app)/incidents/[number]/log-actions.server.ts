@@ -7,7 +7,7 @@ import { requireActor } from '$lib/server/http/guard';
 import { failWith } from '$lib/server/http/respond';
 import * as entries from '$lib/server/incidents/entries-service';
 import { error, redirect, type RequestEvent } from '@sveltejs/kit';
-import { formAction, readId, readNumber } from './run-action';
+import { formAction, readId, readNumber } from './run-action.server';
 
 /** The forms that add to the log: entries and evidence. */
 export const logActions = {

@@ -4,7 +4,7 @@ import { requireActor } from '$lib/server/http/guard';
 import { failWith } from '$lib/server/http/respond';
 import * as attempts from '$lib/server/incidents/attempts-service';
 import { redirect, type RequestEvent } from '@sveltejs/kit';
-import { formAction, readId, readNumber } from './run-action';
+import { formAction, readId, readNumber } from './run-action.server';
 
 const stepPatch = attemptPatch.pick({ steps: true });
 
