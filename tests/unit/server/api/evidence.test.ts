@@ -157,6 +157,7 @@ describe('GET /api/v1/evidence/{sha256}', () => {
 		const path = `/api/v1/evidence/${'0'.repeat(64)}`;
 		expect((await request('GET', path)).status).toBe(401);
 		expect((await request('GET', path, { as: 'reader' })).status).toBe(404);
+		expect((await request('GET', '/api/v1/evidence/%00', { as: 'reader' })).status).toBe(404);
 	});
 
 	it('sends the masked bytes as a download that nothing renders', async () => {
