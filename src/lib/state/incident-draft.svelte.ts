@@ -30,8 +30,14 @@ export class IncidentDraft {
 	#typed = new Set<DraftField>();
 	#timer: ReturnType<typeof setTimeout> | undefined;
 
-	constructor(first: Partial<DraftValues>) {
-		Object.assign(this.values, first);
+	/** @param typed what a person typed before a refusal: it is theirs. */
+	constructor(typed: Record<string, string> = {}) {
+		for (const field of DRAFT_FIELDS) {
+			const value = typed[field];
+			if (value === undefined) continue;
+			this.values[field] = value;
+			if (value !== '') this.#typed.add(field);
+		}
 	}
 
 	/** A person typed into the field: it is theirs from now on. */
@@ -61,6 +67,11 @@ export class IncidentDraft {
 			}
 		}
 		this.keep();
+	}
+
+	/** Sets when it was noticed, as long as nobody typed it: the zone may become known after the first paint. */
+	offerNoticed(detectedAt: string): void {
+		if (!this.#typed.has('detectedAt')) this.values.detectedAt = detectedAt;
 	}
 
 	/** Takes up a draft that this device kept; says whether there was one. */
@@ -97,9 +108,9 @@ export class IncidentDraft {
 	}
 
 	/** Throws the draft away and begins anew. */
-	restart(first: Partial<DraftValues>): void {
+	restart(): void {
 		this.forget();
-		this.values = { ...emptyDraft(), ...first };
+		this.values = { ...emptyDraft(), detectedAt: this.values.detectedAt };
 		this.from = {};
 		this.restored = false;
 		this.#typed.clear();
