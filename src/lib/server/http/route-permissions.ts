@@ -68,14 +68,17 @@ export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
 export function findAccess(routeId: string, method: string, actionName: string | null): Access | null {
 	const row = ROUTE_PERMISSIONS[routeId];
 	if (!row) return null;
-	const named = method === 'POST' && actionName !== null ? row.actions?.[actionName] : undefined;
+	const actions = row.actions ?? {};
+	// The name comes out of the address: `constructor` must find nothing.
+	const isNamed = method === 'POST' && actionName !== null && Object.hasOwn(actions, actionName);
+	const named = isNamed ? actions[actionName] : undefined;
 	return named ?? row[toMethod(method)] ?? null;
 }
 
 /** The methods of a route, as `Allow` lists them. */
 export function listMethods(routeId: string): string[] {
-	const { actions: _actions, ...methods } = ROUTE_PERMISSIONS[routeId] ?? {};
-	const names = Object.keys(methods);
+	const { actions, ...methods } = ROUTE_PERMISSIONS[routeId] ?? {};
+	const names = [...new Set([...Object.keys(methods), ...(actions ? ['POST'] : [])])];
 	return names.includes('GET') ? ['HEAD', ...names] : names;
 }
 

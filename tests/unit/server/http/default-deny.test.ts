@@ -50,6 +50,8 @@ describe('findAccess', () => {
 	it('knows no route and no method that is not in the table', () => {
 		expect(findAccess('/nowhere', 'GET', null)).toBeNull();
 		expect(findAccess('/sign-out', 'GET', null)).toBeNull();
+		expect(findAccess('/(app)/runbooks/[slug]', 'POST', 'constructor')).toBeNull();
 		expect(listMethods('/sign-out')).toEqual(['POST']);
+		expect(listMethods('/(app)/runbooks/[slug]')).toEqual(['HEAD', 'GET', 'POST']);
 	});
 });
