@@ -99,6 +99,8 @@ describe('cautionsFor', () => {
 		[3, 'create index i on booking (at)'],
 		[3, 'vacuum (full) booking'],
 		[3, 'truncate booking'],
+		[3, "prepare transaction 'b1'"],
+		[3, "rollback prepared 'b1'"],
 		[3, 'drop table booking'],
 		[3, 'delete from booking'],
 		[3, 'update booking set at = null where id = 1'],

@@ -139,7 +139,7 @@ function classifySetting(node: Node): Finding[] | null {
 		const { dbname, setstmt } = node.AlterDatabaseSetStmt;
 		return one('alter-database-set', { database: dbname ?? 'the database', setting: settingOf(setstmt) });
 	}
-	if ('TransactionStmt' in node) return one('transaction');
+	if ('TransactionStmt' in node) return one(transactionKind(node.TransactionStmt.kind));
 	if ('PrepareStmt' in node) return one('prepare');
 	if ('DeallocateStmt' in node) return one('deallocate');
 	if ('DiscardStmt' in node) return one('discard');
@@ -149,6 +149,11 @@ function classifySetting(node: Node): Finding[] | null {
 function setKind(statement: VariableSetStmt): PostgresKind {
 	if (statement.kind === 'VAR_RESET' || statement.kind === 'VAR_RESET_ALL') return 'reset';
 	return statement.is_local === true ? 'set-local' : 'set';
+}
+
+function transactionKind(kind: string | undefined): PostgresKind {
+	if (kind === 'TRANS_STMT_PREPARE') return 'prepare-transaction';
+	return kind?.endsWith('_PREPARED') === true ? 'end-prepared-transaction' : 'transaction';
 }
 
 function settingOf(statement: VariableSetStmt | undefined): string {

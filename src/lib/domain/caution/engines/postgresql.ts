@@ -204,6 +204,23 @@ export const POSTGRES_RULES = {
 		load: 'Locks are held until the transaction ends, not the statement.',
 		section: 'SQL commands, BEGIN, COMMIT, ROLLBACK; 13.3 Explicit Locking'
 	}),
+	'prepare-transaction': rule({
+		level: 3,
+		cancel: 'Nothing: it is done at once.',
+		undo: 'ROLLBACK PREPARED the transaction.',
+		load: 'The transaction goes on without its session: it keeps its locks, also over a restart, and keeps VACUUM from cleaning up until somebody ends it.',
+		precheck: ['old-transactions'],
+		section: 'SQL commands, PREPARE TRANSACTION'
+	}),
+	'end-prepared-transaction': rule({
+		level: 3,
+		inTransaction: false,
+		cancel: 'Nothing: it is done at once.',
+		undo: 'Cannot be undone: the transaction is over, with what it did or without.',
+		load: 'Its locks are given back.',
+		precheck: ['old-transactions'],
+		section: 'SQL commands, COMMIT PREPARED, ROLLBACK PREPARED'
+	}),
 	prepare: rule({
 		level: 1,
 		cancel: 'Nothing.',
