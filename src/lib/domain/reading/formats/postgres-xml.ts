@@ -3,7 +3,7 @@ import { BOUNDS } from '../bounds';
 import { maskXmlPlan } from '../masking/mask-xml-plan';
 import type { FormatResult, Plan, ReadingWarning } from '../reading';
 import { nothingRead, type TextFormat } from './format-reader';
-import { isRecord, records, type PlanNode } from './postgres/plan-node';
+import { isRecord, records, wordList, type PlanNode } from './postgres/plan-node';
 import { toPlan } from './postgres/to-plan';
 import { statementAbove } from './statement-above';
 import { blankDecoration } from './undecorate';
@@ -29,7 +29,7 @@ interface Element {
 	hasChildren: boolean;
 }
 
-const LISTS = new Set(['Plans', 'Workers', 'Triggers', 'Grouping Sets']);
+const LISTS = new Set(['Plans', 'Workers', 'Triggers', 'Grouping Sets', 'Group Keys', 'Hash Keys']);
 
 /** Plans of an XML text; what stands behind a fault is lost, what stands before it is kept. */
 export function readPostgresXml(text: string): FormatResult {
@@ -90,6 +90,12 @@ function close(open: Element[]): void {
 	const parent = open[open.length - 1];
 	if (element === undefined || parent === undefined) return;
 	const value = valueOf(element);
+	if (element.key === 'Incremental Sort Groups' && isRecord(value)) {
+		// The XML form has one tag for both; full-sort groups come first (explain.c).
+		const key = parent.members['Full-sort Groups'] === undefined ? 'Full-sort Groups' : 'Pre-sorted Groups';
+		parent.members[key] = nameSortSpaces(value);
+		return;
+	}
 	if (element.key === 'Item' || LISTS.has(parent.key)) parent.items.push(value);
 	else {
 		const known = parent.members[element.key];
@@ -104,7 +110,18 @@ function close(open: Element[]): void {
 
 function valueOf(element: Element): unknown {
 	if (element.items.length > 0) return element.items;
-	return element.hasChildren ? element.members : element.text;
+	return element.hasChildren ? element.members : element.text.trim() === '' ? '' : element.text;
+}
+
+/** Memory before disk, in one tag; where only one is there, the methods tell which. */
+function nameSortSpaces(group: PlanNode): PlanNode {
+	const spaces = records(group['Sort Space']);
+	const onlyDisk =
+		spaces.length === 1 && wordList(group['Sort Methods Used']).every((each) => each.startsWith('external'));
+	const [first, second] = spaces;
+	return onlyDisk
+		? { ...group, 'Sort Space Disk': first }
+		: { ...group, 'Sort Space Memory': first, 'Sort Space Disk': second };
 }
 
 function lineOf(text: string, offset: number): number {

@@ -37,8 +37,14 @@ export function maskYamlPlan(text: string): string {
 }
 
 function maskValue(value: string): string {
+	if (value.startsWith('[')) return value.replace(/"(?:[^"\\]|\\.)*"/g, maskQuoted);
+	return QUOTED.test(value) ? maskQuoted(value) : value.includes("'") ? maskStatement(value) : value;
+}
+
+/** A string in double quotes, perhaps with something behind it or cut off. */
+function maskQuoted(value: string): string {
 	const quoted = QUOTED.exec(value);
-	if (quoted === null) return /^["[]/.test(value) || /['"]/.test(value) ? maskStatement(value) : value;
+	if (quoted === null) return value;
 	const raw = quoted[1] ?? '';
 	const text = raw.includes('\\') ? unquote(raw) : raw;
 	const masked = maskStatement(text);

@@ -79,7 +79,6 @@ function takeAggregate(text: string, into: PlanNode): void {
 	if (memory !== null) into['Peak Memory Usage'] = memory[1];
 	if (batches !== null) {
 		into['HashAgg Batches'] = batches[1];
-		into['Planned Partitions'] ??= 0;
 		into['Disk Usage'] ??= 0;
 	}
 	if (disk !== null) into['Disk Usage'] = disk[1];

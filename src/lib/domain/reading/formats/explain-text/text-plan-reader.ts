@@ -116,11 +116,11 @@ export class TextPlanReader {
 		return true;
 	}
 
-	/** Without figures an operator's name could be any word; a plan has an arrow or a property below it. */
+	/** Without figures an operator's name could be any word: a plan has a body below it, or nothing at all. */
 	private hasBodyBelow(index: number, column: number): boolean {
-		const next = this.lines[index + 1] ?? '';
-		const body = next.trim();
-		return (body.startsWith('->') || PROPERTY.test(body)) && indentOf(next) >= column;
+		const next = this.lines.slice(index + 1).find((line) => line.trim() !== '');
+		if (next === undefined) return this.above.every((line) => line.trim() === '');
+		return isPlanBody(next.trim()) && indentOf(next) >= column;
 	}
 
 	private nextAbove(index: number, text: string): void {
@@ -171,6 +171,11 @@ export class TextPlanReader {
 			at
 		});
 	}
+}
+
+/** Whether a line may stand below an operator: an arrow, a property or the label of a subplan. */
+export function isPlanBody(body: string): boolean {
+	return body.startsWith('->') || PROPERTY.test(body) || LABEL.test(body);
 }
 
 const QUERY_TEXT = /^(?:Query Text|Query Parameters):/;

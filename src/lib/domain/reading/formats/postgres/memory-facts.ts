@@ -72,9 +72,11 @@ function hashOf(node: PlanNode): HashFacts | null {
 }
 
 function aggregateOf(part: PlanNode, who: string): AggregateFacts | null {
-	// Planned once for all processes: it stands at the leader.
-	const plannedPartitions = who === 'leader' ? figure(part['Planned Partitions']) : null;
 	const batches = figure(part['HashAgg Batches']);
+	// Planned once for all processes, so it stands at the leader; the text form leaves a zero out, COSTS OFF all.
+	const planned =
+		figure(part['Planned Partitions']) ?? (batches !== null && part['Plan Rows'] !== undefined ? 0 : null);
+	const plannedPartitions = who === 'leader' ? planned : null;
 	const peakKb = figure(part['Peak Memory Usage']);
 	// The text form leaves a zero of planned partitions out; without run-time figures it says nothing.
 	if (!plannedPartitions && batches === null && peakKb === null) return null;

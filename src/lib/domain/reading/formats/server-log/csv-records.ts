@@ -1,4 +1,5 @@
 import type { FormatResult } from '../../reading';
+import { maskUnknown } from '../../masking/mask-unknown';
 import { maskAddresses } from '../../secrets';
 import { LineCutter } from './json-lines';
 import { LogAccount } from './log-account';
@@ -20,6 +21,9 @@ const COLUMN = {
 	query: 19,
 	application: 22
 } as const;
+
+/** The columns of 12 and older. */
+const FEWEST_FIELDS = 23;
 
 /** A record that is still open at this length has lost a quotation mark and is given up. */
 const RECORD_LENGTH = 4 * 1024 * 1024;
@@ -111,6 +115,8 @@ export class CsvMasker {
 function maskRecord(record: string): string {
 	if (record.trim() === '') return record;
 	const fields = splitRecord(record);
+	// No record: the rest of one that was cut, or something else in the file.
+	if (fields.length < FEWEST_FIELDS) return maskUnknown(record);
 	for (const [column, mask] of MASKS) {
 		const raw = fields[column];
 		if (raw === undefined || raw === '') continue;
