@@ -51,8 +51,10 @@ function toConditions(filter: ListFilter): Conditions {
 	addList('services', 'i.service', filter.service);
 	addList('engines', 'i.engine', filter.engine);
 	if (filter.symptom.length > 0) {
+		// Asked of each incident in the list's order, so that a page is full before all were asked.
 		sql.push(
-			'i.number IN (SELECT s.incidentNumber FROM incidentSymptoms s WHERE s.symptomId IN (:symptoms))'
+			`EXISTS (SELECT 1 FROM incidentSymptoms s
+			WHERE s.incidentNumber = i.number AND s.symptomId IN (:symptoms))`
 		);
 		values['symptoms'] = filter.symptom;
 	}
