@@ -18,6 +18,9 @@ export interface DemoSignIn {
 	password: string;
 }
 
+/** Puts the demonstration into the open, empty database. */
+type Fill = (dataDir: string) => Promise<unknown>;
+
 async function listFiles(folder: string): Promise<string[]> {
 	try {
 		// The lock of the program that is filling it.
@@ -40,10 +43,10 @@ async function readMarker(): Promise<'filling' | 'filled' | null> {
 	return parsed.success ? parsed.data.state : null;
 }
 
-async function fill(dataDir: string): Promise<void> {
+async function fillOpen(dataDir: string, fill: Fill): Promise<void> {
 	await openDatabase(dataDir);
 	await writeSetting(MARKER, { state: 'filling' });
-	await fillDemo(dataDir);
+	await fill(dataDir);
 	await writeSetting(MARKER, { state: 'filled' });
 }
 
@@ -52,7 +55,10 @@ async function fill(dataDir: string): Promise<void> {
  * marker as it is, and starts over where filling was cut off. Answers null, with nothing open and nothing
  * touched, for a folder that holds anything else.
  */
-export async function prepareDemo(dataDir: string): Promise<'filled' | 'reused' | null> {
+export async function prepareDemo(
+	dataDir: string,
+	fill: Fill = fillDemo
+): Promise<'filled' | 'reused' | null> {
 	if (await isForeign(dataDir)) return null;
 	const files = await listFiles(dataDir);
 	if (files.length > 0) {
@@ -65,9 +71,9 @@ export async function prepareDemo(dataDir: string): Promise<'filled' | 'reused' 
 		await closeDatabase();
 		if (state === null) return null;
 		// Cut off while filling: nothing of anybody's own can be in it yet.
-		for (const name of files) await rm(path.join(dataDir, name), { recursive: true });
+		for (const name of files) await rm(path.join(dataDir, name), { recursive: true, force: true });
 	}
-	await fill(dataDir);
+	await fillOpen(dataDir, fill);
 	return 'filled';
 }
 
