@@ -25,7 +25,7 @@ describe('cautionsFor, what is not understood', () => {
 		['a function that is not known to read only', 'select tidy_up(id) from booking'],
 		['the same in another schema under a known name', 'select ops.count(1)'],
 		['an advisory lock', 'select pg_advisory_lock(1)'],
-		['a file written on the server', "copy booking to '/var/tmp/x'"],
+		['a file written on the server', "copy booking to '/srv/x'"],
 		['a program on the server', "copy booking from program 'true'"],
 		['a function definition', 'create function f() returns int language sql as $$ select 1 $$'],
 		['ALTER of an index', 'alter index booking_at set (fastupdate = off)']

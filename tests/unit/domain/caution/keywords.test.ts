@@ -16,7 +16,7 @@ describe('cautionsFor, engines known by first words only', () => {
 		['mariadb', 'analyze format=json select * from booking'],
 		['mysql', 'explain analyze select 1'],
 		['mariadb', 'select sleep(10)'],
-		['mariadb', "select * into outfile '/tmp/x' from booking"],
+		['mariadb', "select * into outfile '/srv/x' from booking"],
 		['mariadb', 'select * from booking for update'],
 		['mysql', 'select 1 /*! , tidy_up() */'],
 		['mysql', 'call tidy_up()'],
