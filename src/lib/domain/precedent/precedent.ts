@@ -53,8 +53,8 @@ export interface ProfileSymptom {
 export interface EvidenceProfile {
 	/** One of each id, heaviest first. */
 	symptoms: ProfileSymptom[];
-	/** Likeliest first. */
-	causes: { id: CauseId; confidence: number }[];
+	/** Likeliest first, with the symptoms that each rests on. */
+	causes: { id: CauseId; confidence: number; because: SymptomId[] }[];
 	/** Of the statements; heaviest spiller first. */
 	fingerprints: string[];
 	relations: string[];
@@ -62,6 +62,8 @@ export interface EvidenceProfile {
 	shapes: string[];
 	/** Traits of the plan that tell faults of one kind from another, "begins-at:function-scan". */
 	traits: string[];
+	/** Some plan of it has run-time figures. */
+	hasRun: boolean;
 }
 
 /** What two incidents are compared on beside their words. */
@@ -70,8 +72,8 @@ export interface PrecedentProfile extends EvidenceProfile {
 	engine: Engine | null;
 	database: string | null;
 	startedAt: string | null;
-	/** Causes that narrative or resolution name, or name the remedy of. */
-	toldCauses: CauseId[];
+	/** Causes that the words name, or name the remedy of; `isRemedied`: in the resolution. */
+	toldCauses: { id: CauseId; isRemedied: boolean }[];
 	/** A cause that a person wrote down, where it is one of the catalogue's. */
 	confirmedCause: CauseId | null;
 }

@@ -35,15 +35,17 @@ export const NO_EVIDENCE: EvidenceProfile = {
 	fingerprints: [],
 	relations: [],
 	shapes: [],
-	traits: []
+	traits: [],
+	hasRun: false
 };
 
 /** The profile of an incident: what its evidence shows, and where it happened. */
 export function profileOf(fields: ProfileFields, evidence: EvidenceProfile): PrecedentProfile {
 	return {
 		...evidence,
-		symptoms: addTold(evidence.symptoms, fields.text),
-		toldCauses: findToldCauses(`${fields.text}\n\n${fields.resolution ?? ''}`),
+		// A plan that ran shows what there is; what the words tell beside it is what somebody feared.
+		symptoms: evidence.hasRun ? evidence.symptoms : addTold(evidence.symptoms, fields.text),
+		toldCauses: tellCauses(fields),
 		service: fields.service,
 		engine: fields.engine,
 		database: fields.database,
@@ -55,15 +57,16 @@ export function profileOf(fields: ProfileFields, evidence: EvidenceProfile): Pre
 /** What the readings of one incident say, taken together: one plan saved in several forms counts once. */
 export function profileEvidence(readings: readonly EvidenceOfIncident[]): EvidenceProfile {
 	const symptoms = new Map<SymptomId, ProfileSymptom>();
-	const causes = new Map<CauseId, number>();
+	const causes = new Map<CauseId, EvidenceProfile['causes'][number]>();
 	const fingerprints = new Set<string>();
 	const relations = new Set<string>();
 	const shapes = new Set<string>();
 	const traits = new Set<string>();
 	for (const reading of readings) {
 		for (const symptom of reading.symptoms) keepHeavier(symptoms, toProfileSymptom(symptom, reading));
-		for (const { id, confidence } of reading.causes)
-			causes.set(id, Math.max(confidence, causes.get(id) ?? 0));
+		for (const { id, confidence, because } of reading.causes) {
+			if ((causes.get(id)?.confidence ?? 0) < confidence) causes.set(id, { id, confidence, because });
+		}
 		for (const fingerprint of fingerprintsOf(reading)) fingerprints.add(fingerprint);
 		if (reading.plan === null) continue;
 		for (const { relation } of walkOperators(reading.plan.root))
@@ -71,16 +74,22 @@ export function profileEvidence(readings: readonly EvidenceOfIncident[]): Eviden
 		for (const shape of shapesOf(reading.plan.root, reading.trails)) shapes.add(shape);
 		for (const trait of findTraits(reading.plan, reading.trails)) traits.add(trait);
 	}
+	// One form of the plan without run-time figures takes nothing from the one that has them.
+	const hasRun = readings.some(hasRuntimeFigures);
+	if (hasRun) symptoms.delete('no-runtime-figures');
 	return {
 		symptoms: [...symptoms.values()].sort((one, other) => other.weight - one.weight),
-		causes: [...causes]
-			.map(([id, confidence]) => ({ id, confidence }))
-			.sort((one, other) => other.confidence - one.confidence),
+		causes: [...causes.values()].sort((one, other) => other.confidence - one.confidence),
 		fingerprints: [...fingerprints].slice(0, MOST_FINGERPRINTS),
 		relations: [...relations].slice(0, MOST_RELATIONS),
 		shapes: [...shapes].slice(0, MOST_SHAPES),
-		traits: [...traits].slice(0, MOST_TRAITS)
+		traits: [...traits].slice(0, MOST_TRAITS),
+		hasRun
 	};
+}
+
+function hasRuntimeFigures(reading: EvidenceOfIncident): boolean {
+	return reading.plan !== null && reading.symptoms.every((symptom) => symptom.id !== 'no-runtime-figures');
 }
 
 function keepHeavier(symptoms: Map<SymptomId, ProfileSymptom>, found: ProfileSymptom): void {
@@ -113,6 +122,16 @@ function shapesOf(root: Parameters<typeof indexByPath>[0], trails: readonly Trai
 	return trails.map((trail) =>
 		trail.steps.map((step): OperatorKind => operators.get(step.operator)?.kind ?? 'other').join('>')
 	);
+}
+
+/** Causes named by the words; the resolution, written once it was over, is believed before the narrative. */
+function tellCauses({ text, resolution }: ProfileFields): PrecedentProfile['toldCauses'] {
+	const remedied = findToldCauses(resolution ?? '');
+	const feared = findToldCauses(text).filter((id) => !remedied.includes(id));
+	return [
+		...remedied.map((id) => ({ id, isRemedied: true })),
+		...feared.map((id) => ({ id, isRemedied: false }))
+	];
 }
 
 /** Adds what the narrative tells of and no evidence shows. */

@@ -82,7 +82,7 @@ export const CONCEPTS: readonly Concept[] = [
 	concept(
 		'skew',
 		'uneven values',
-		/\bskew|\bsame (?:key|value)\b|\bone (?:value|key)\b.*\b(?:rows|percent|%|third|half)|\bhot (?:key|value)\b|\bduplicate keys?\b|\bdummy\b|\bplaceholder (?:value|key|row)|\bdefault (?:value|key|owner|account)\b|\bthousands? of (?:batches|temp files)\b|\bcan(?:no|')?t (?:be )?split/
+		/\bskew|\bsame (?:key|value)\b|\bone (?:value|key)\b.*\b(?:rows|percent|%|third|half)|\bhot (?:key|value)\b|\bheavy (?:value|key|hitter)|\b(?:single|equal|null) keys?\b|\bsame hash\b|\bhash to the same\b|\bplaceholder\b|\bumbrella\b|\bdummy (?:value|key|row|record)|\bmost rows (?:carry|have|hold)|\bevery row (?:carries|has|holds) the same|\b(?:keeps? |gives up |never )splitting|\bdoubl(?:es|ed|ing) (?:and|again|the (?:number|batches))|\bcan(?:no|')?t (?:be )?split/
 	),
 	concept(
 		'sort',
@@ -113,7 +113,7 @@ export const CONCEPTS: readonly Concept[] = [
 	concept(
 		'estimate-right',
 		'estimate right',
-		/\b(?:estimat\w*|guess\w*|row (?:numbers|counts?)|cardinalit\w+|rows)\b[^.;]{0,25}\b(?:exact\w*|right|spot on|fine|ok|okay|correct|equal\w*|good enough|close|accurate)\b|\bguess = reality\b|\brows estimated right\b|\bno estimate trouble\b|\bestimated? [~≈]?(?:about |around )?\d+[^.;]{0,12}\b(?:got|vs|and got)\b/
+		/\b(?:estimat\w*|guess\w*|row (?:numbers|counts?)|cardinalit\w+|rows)\b[^.;]{0,25}\b(?:exact\w*|right|spot on|bang on|fine|ok|okay|correct|equal\w*|good enough|close|accurate|perfect|match(?:es)?)\b|\bto the row\b|\bwithin (?:a|one|two|\d) ?(?:percent|%)|\bguess = reality\b|\brows estimated right\b|\bno estimate trouble\b|\bestimated? [~≈]?(?:about |around )?\d+[^.;]{0,12}\b(?:got|vs|and got)\b/
 	),
 	concept(
 		'statistics',
@@ -180,7 +180,7 @@ export const CONCEPTS: readonly Concept[] = [
 	concept(
 		'bloat',
 		'bloat',
-		/\bbloat|\bdead (?:rows|tuples|ones|versions|space)\b|\bfillfactor\b|\bvacuum full\b|\brepack\b|\bhot updates?\b|\brows? per page\b|\bpages?\b[^.]{0,30}\b(?:empty|nearly empty)|\bvacuum (?:can'?t|never|cannot|was|had)/
+		/\bbloat|\bdead (?:rows|tuples|ones|versions|space)\b|\bdead_tup|\brelpages\b|\b(?:space|pages)\b[^.]{0,30}\b(?:never (?:returned|given back|reused)|stayed allocated)|\bfree space inside\b|\bper page\b|\bdeleted (?:nearly |almost )?(?:everything|all|most|\d\d ?%)|\bfillfactor\b|\bvacuum full\b|\brepack\b|\bhot updates?\b|\brows? per page\b|\bpages?\b[^.]{0,30}\b(?:empty|nearly empty)|\bvacuum (?:can'?t|never|cannot|was|had)/
 	),
 	concept(
 		'jit',

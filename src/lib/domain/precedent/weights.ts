@@ -11,15 +11,15 @@ import type { ReasonKind } from './precedent';
  */
 export const PART_WEIGHTS: Readonly<Record<ReasonKind, number>> = {
 	/** Useful 0.1..0.4. Higher: old tales with the same words come before new ones with the same fault. */
-	words: 0.22,
+	words: 0.13,
 	/** Useful 0.2..0.5. Higher: what is seen counts more than why it happened. */
-	symptoms: 0.32,
+	symptoms: 0.3,
 	/** Useful 0.15..0.4. Higher: one wrong guess of the rules pulls more wrong precedents up. */
-	cause: 0.26,
+	cause: 0.6,
 	/** Useful 0.1..0.3. Higher: plans of one shape meet although their faults differ. */
-	statement: 0.17,
+	statement: 0.13,
 	/** Useful 0..0.1. Higher: one's own service comes first whatever its fault. */
-	setting: 0.03,
+	setting: 0.02,
 	/** Useful 0.1..0.5. Higher: one person's verdict outdoes the evidence. Counts only where there is one. */
 	verdict: 0.3
 };
@@ -33,7 +33,7 @@ export const FULL_WORDS_SHARE = 0.5;
 /** How far a symptom's weight (0..1) sets what it counts. 0: a slight one counts like a heavy one. Useful 0..0.7. */
 export const HEAVINESS_COUNTS = 0.3;
 /** Taken off a common symptom when one spill was planned and the other grew. Useful 0..0.4. */
-export const COURSE_COUNTS = 0.25;
+export const COURSE_COUNTS = 0.15;
 /** Taken off when it shows at another kind of operator. Useful 0..0.4. */
 export const PLACE_COUNTS = 0.2;
 /** Taken off when its figures lie three decades apart, less when nearer. Useful 0..0.3. */
@@ -41,11 +41,25 @@ export const DECADE_COUNTS = 0.15;
 /** What a symptom that only the narrative tells of counts beside one that evidence shows. Useful 0..0.6. */
 export const TOLD_COUNTS = 0.4;
 
+/** What a lack of run-time figures counts beside a fault: it says how the plan was taken. Useful 0..0.5. */
+export const LACK_COUNTS = 0.25;
 /** What the symptoms as a whole count where the one asked about has only told ones. Useful 0.1..0.6. */
-export const ONLY_TOLD_COUNTS = 0.3;
+export const ONLY_TOLD_COUNTS = 0.6;
 
-/** How far a cause is believed that only the words name. Useful 0.1..0.5. */
+/** Power that confidences are raised to. Higher: the first cause outweighs the others more. Useful 1..3. */
+export const CAUSE_SHARPNESS = 3;
+/** Power that the rarity of a cause is raised to. Higher: a rare cause of little confidence leads. Useful 0..1. */
+export const CAUSE_RARITY = 0.5;
+/** What the symptoms that a cause rests on count beside the cause itself. Useful 0.5..2. */
+export const GROUNDS_COUNT = 1.5;
+/** How far a cause is believed that only the narrative names. Useful 0.1..0.5. */
 export const TOLD_CAUSE_COUNTS = 0.3;
+/** How far a cause is believed whose remedy the resolution names, where no evidence speaks. Useful 0.3..0.8. */
+export const REMEDY_COUNTS = 0.6;
+/** What is left of the likeness in causes where the other incident has none but told ones. Useful 0.3..0.8. */
+export const TOLD_CAUSES_KEEP = 0.5;
+/** What words add to the belief where evidence speaks too. Useful 0..0.3. */
+export const TOLD_BESIDE_EVIDENCE = 0.15;
 /** What the rules' guesses count once a person has confirmed a cause. Useful 0..0.5. */
 export const DOUBT_AFTER_CONFIRMATION = 0.25;
 

@@ -19,8 +19,9 @@ const INCIDENTS_BUDGET = 40_000;
 export interface Found {
 	ranked: RankedPrecedent[];
 	rows: ReadonlyMap<number, store.CandidateRow>;
-	/** The terms asked for, rarest first. */
+	/** The terms asked for, rarest first, and what BM25 could reach with them. */
 	terms: string[];
+	best: number;
 	rarity: Rarity;
 }
 
@@ -48,6 +49,7 @@ export async function findRanked(
 		ranked,
 		rows: new Map(rows.map((row) => [row.number, row])),
 		terms: words.terms,
+		best: words.weight,
 		rarity: evidence.rarity
 	};
 }

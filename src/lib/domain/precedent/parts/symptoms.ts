@@ -1,6 +1,13 @@
 import { symptomFeature } from '../features';
 import type { ProfileSymptom, Rarity } from '../precedent';
-import { COURSE_COUNTS, DECADE_COUNTS, HEAVINESS_COUNTS, PLACE_COUNTS, TOLD_COUNTS } from '../weights';
+import {
+	COURSE_COUNTS,
+	DECADE_COUNTS,
+	HEAVINESS_COUNTS,
+	LACK_COUNTS,
+	PLACE_COUNTS,
+	TOLD_COUNTS
+} from '../weights';
 
 /**
  * Weighted Jaccard over two incidents' symptoms, 0..1. A symptom's weight is its rarity, more where it does
@@ -29,7 +36,8 @@ export function compareSymptoms(
 
 function weightOf(symptom: ProfileSymptom, rarity: Rarity): number {
 	const heaviness = 1 - HEAVINESS_COUNTS * (1 - symptom.weight);
-	return rarity(symptomFeature(symptom.id)) * heaviness * (symptom.told ? TOLD_COUNTS : 1);
+	const counts = symptom.told ? TOLD_COUNTS : symptom.id === 'no-runtime-figures' ? LACK_COUNTS : 1;
+	return rarity(symptomFeature(symptom.id)) * heaviness * counts;
 }
 
 /** 1 where all that is known of both agrees; what one of them doesn't know takes nothing off. */
