@@ -61,11 +61,15 @@ async function checkFiles(dataDir: string): Promise<{ faults: string[]; files: n
 	const stored = await listStored(dataDir);
 	const present = new Set(stored);
 	const known = new Set(rows.map((row) => row.sha256));
+	// Marked before its row is written or removed: what a crash left of it, the next start takes away.
+	const marked = new Set(await listNames(path.join(dataDir, 'evidence', 'pending')));
 	const faults = rows
 		.filter((row) => !present.has(row.sha256))
 		.map((row) => `evidence ${row.id} (${row.name}): its file ${row.sha256} is missing`);
 	for (const sha256 of stored) {
-		if (!known.has(sha256)) faults.push(`evidence file ${sha256} belongs to nothing`);
+		if (!known.has(sha256)) {
+			if (!marked.has(sha256)) faults.push(`evidence file ${sha256} belongs to nothing`);
+		}
 		// One after the other: a folder may hold gigabytes.
 		else if ((await hashFile(evidencePath(sha256))) !== sha256)
 			faults.push(`evidence file ${sha256} was changed`);
