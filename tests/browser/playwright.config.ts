@@ -16,9 +16,9 @@ export default defineConfig({
 	workers: 1,
 	retries: 0,
 	forbidOnly: Boolean(process.env.CI),
-	timeout: 60_000,
+	timeout: 45_000,
 	expect: { timeout: 10_000 },
-	reporter: [['list'], ['json']],
+	reporter: process.env.PLAYWRIGHT_JSON_OUTPUT_NAME ? [['list'], ['json']] : [['list']],
 	use: {
 		baseURL: origin,
 		timezoneId: 'Europe/Paris',
@@ -45,6 +45,6 @@ export default defineConfig({
 		timeout: 180_000,
 		reuseExistingServer: false,
 		gracefulShutdown: { signal: 'SIGTERM', timeout: 10_000 },
-		env: { PORT: String(port), HOST: '127.0.0.1', ORIGIN: origin, MAX_UPLOAD_MB: '64' }
+		env: { PORT: String(port), HOST: '127.0.0.1', ORIGIN: origin, MAX_UPLOAD_MB: '16' }
 	}
 });
