@@ -138,7 +138,7 @@ function describePair(one: ProfileSymptom, other: ProfileSymptom): string {
 			: one.relation !== null && one.relation === other.relation
 				? ` at ${withArticle(toWords(one.operator))} of ${one.relation}`
 				: ` at ${withArticle(toWords(one.operator))}`;
-	return `${toWords(one.id)}${course}${place}`;
+	return `${toWords(one.id)}${course}${course !== '' && place !== '' ? ',' : ''}${place}`;
 }
 
 function withArticle(noun: string): string {
