@@ -85,10 +85,12 @@ export async function findSpills(incidents: readonly number[]): Promise<SpillRow
 	return select<SpillRow>(
 		`WITH spilled AS MATERIALIZED (
 			SELECT e.incidentNumber AS incident, r.body AS body,
-				(SELECT json_extract(s.value, '$.operator') FROM json_each(r.body, '$.symptoms') s
-					WHERE json_extract(s.value, '$.id') LIKE '%-spill'
-						AND json_extract(s.value, '$.operator') IS NOT NULL
-					ORDER BY s.key LIMIT 1) AS path
+				-- The trail ends at the join; the symptom of a hash stands at its table.
+				coalesce(json_extract(r.body, '$.trails[0].overflow'),
+					(SELECT json_extract(s.value, '$.operator') FROM json_each(r.body, '$.symptoms') s
+						WHERE json_extract(s.value, '$.id') LIKE '%-spill'
+							AND json_extract(s.value, '$.operator') IS NOT NULL
+						ORDER BY s.key LIMIT 1)) AS path
 			FROM readings r JOIN evidence e ON e.id = r.evidenceId
 			WHERE e.incidentNumber IN (:incidents)
 		), placed AS (

@@ -1,8 +1,9 @@
 import { walkOperators, type Operator } from '$lib/domain/reading/operator';
+import { phraseOperator } from '$lib/domain/reading/operator-phrase';
 import type { Engine, OperatorSizing, Reading } from '$lib/domain/reading/reading';
 import { defaultHashMemMultiplier, readMajorVersion } from '$lib/domain/sizing/layout';
 import type { SizingInput } from '$lib/domain/sizing/sizing';
-import { readMemoryKb } from '$lib/domain/sizing/units';
+import { formatKb, readMemoryKb } from '$lib/domain/sizing/units';
 
 /** PostgreSQL's default work_mem (manual 15, section 20.4.1). */
 const DEFAULT_WORK_MEM_KB = 4096;
@@ -24,8 +25,34 @@ export const EXAMPLE: Required<
 	engine: 'postgresql'
 };
 
+/** One operator that overflowed, as a start for the panel. */
+export interface SizingStart {
+	path: string;
+	/** "hash join on invoice_no, 28 MB needed" */
+	label: string;
+	input: SizingInput;
+}
+
+/** The operators of a reading that the panel can size, the greatest need first; empty: none, or no rows known. */
+export function listStarts(reading: Reading): SizingStart[] {
+	const starts: SizingStart[] = [];
+	for (const sizing of [...reading.sizing].sort((a, b) => b.neededKb - a.neededKb)) {
+		const input = startSizing(reading, sizing);
+		const operator = reading.plan === null ? null : findOperator(reading.plan.root, sizing.operator);
+		if (input === null || operator === null || starts.some((one) => one.path === sizing.operator)) continue;
+		const label = `${phraseOperator(operator)}, ${formatKb(sizing.neededKb)} needed`;
+		starts.push({ path: sizing.operator, label, input });
+	}
+	return starts;
+}
+
+function findOperator(root: Operator, path: string): Operator | null {
+	for (const operator of walkOperators(root)) if (operator.path === path) return operator;
+	return null;
+}
+
 /** The panel's figures for one spilling operator of a reading; null: its plan doesn't hold the rows. */
-export function startSizing(reading: Reading, sizing: OperatorSizing): SizingInput | null {
+function startSizing(reading: Reading, sizing: OperatorSizing): SizingInput | null {
 	if (reading.plan === null) return null;
 	const operator = findSizedOperator(reading.plan.root, sizing);
 	const rows = operator?.actualRows ?? operator?.estimatedRows ?? null;
@@ -48,12 +75,9 @@ export function startSizing(reading: Reading, sizing: OperatorSizing): SizingInp
 
 /** The operator whose rows fill the memory: of a hash join the side that is hashed. */
 function findSizedOperator(root: Operator, sizing: OperatorSizing): Operator | null {
-	for (const operator of walkOperators(root)) {
-		if (operator.path !== sizing.operator) continue;
-		if (operator.kind !== 'hash-join') return operator;
-		return operator.children.find((child) => child.kind === 'hash-build') ?? operator;
-	}
-	return null;
+	const operator = findOperator(root, sizing.operator);
+	if (operator?.kind !== 'hash-join') return operator;
+	return operator.children.find((child) => child.kind === 'hash-build') ?? operator;
 }
 
 /** The setting as it stood, kB: as the plan prints it, else back from what the operator was given. */
