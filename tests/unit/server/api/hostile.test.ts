@@ -69,12 +69,10 @@ const value: fc.Arbitrary<unknown> = fc.oneof(
 
 function bodyOf(call: Call): fc.Arbitrary<{ body?: string; type: string }> {
 	if (!call.body) return fc.constant({ type: '' });
-	const json = fc
-		.dictionary(fc.constantFrom(...fieldsOf(call)), value)
-		.map((fields) => ({
-			body: JSON.stringify(fields).replaceAll('\\u0000', '\0'),
-			type: 'application/json'
-		}));
+	const json = fc.dictionary(fc.constantFrom(...fieldsOf(call)), value).map((fields) => ({
+		body: JSON.stringify(fields).replaceAll('\\u0000', '\0'),
+		type: 'application/json'
+	}));
 	const text = fc
 		.tuple(nasty, fc.constantFrom('application/json', 'text/plain', 'multipart/form-data; boundary=x', 'x/y'))
 		.map(([body, type]) => ({ body, type }));
