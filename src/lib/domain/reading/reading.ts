@@ -141,6 +141,8 @@ export interface Plan {
 	root: PlanOperator;
 	engine: Engine;
 	engineVersion: string | null;
+	/** Major version that the plan's own wording shows at least; null: it could be any. */
+	leastMajorVersion: number | null;
 	/** Statement as found beside the plan, literals masked; null where the evidence holds none. */
 	statementText: string | null;
 	planningMs: number | null;

@@ -34,29 +34,43 @@ export interface GroupShape {
 	keyBytes: number;
 	/** Transition values of one group: different aggregates of the list. */
 	transitions: number;
-	/** Transition states that live outside the array: numeric sums, text, one entry a state: its chunks' payload in bytes. */
+	/** Transition states that live outside the values: numeric sums, text. */
 	states: readonly StateShape[];
 }
 
-/** Payloads of the chunks that one by-reference transition state takes. */
-export type StateShape = readonly number[];
+/** Payloads of the chunks that one by-reference transition state takes, in a 64-bit and in a 32-bit build. */
+export interface StateShape {
+	bytes64: readonly number[];
+	bytes32: readonly number[];
+}
 
-/** sum or avg over numeric: NumericAggState (144 bytes) and its two digit buffers. */
-export const NUMERIC_STATE: StateShape = [144, 16, 16];
+/** sum or avg over numeric: NumericAggState and its two digit buffers. */
+export const NUMERIC_STATE: StateShape = { bytes64: [144, 16, 16], bytes32: [120, 16, 16] };
 /** sum over bigint, avg over integers: Int128AggState or an array of two. */
-export const INTEGER_STATE: StateShape = [64];
+export const INTEGER_STATE: StateShape = { bytes64: [64], bytes32: [64] };
 /** string_agg: StringInfoData and its first buffer of 1,024 bytes with the terminating zero. */
-export const TEXT_STATE: StateShape = [24, 1024];
+export const TEXT_STATE: StateShape = { bytes64: [24, 1024], bytes32: [16, 1024] };
+/** Where a pointer has 4 bytes, bigint, double and timestamp results are kept by reference too. */
+const NARROW_STATE_32 = 8;
 
-/** Bytes that one group takes, bucket array aside. */
+/** Bytes of one group's key tuple and transition values. */
 export function groupBytes(layout: MemoryLayout, shape: GroupShape): number {
 	const tupleBytes = layout.minimalTupleHeaderBytes + shape.keyBytes;
 	const perGroupBytes = shape.transitions * layout.perGroupStateBytes;
-	const own = layout.aggregateBump
-		? maxAlign(tupleBytes) + maxAlign(perGroupBytes)
-		: allocSetChunkBytes(layout, tupleBytes) +
-			(perGroupBytes > 0 ? allocSetChunkBytes(layout, perGroupBytes) : 0);
-	return shape.states.flat().reduce((sum, bytes) => sum + allocSetChunkBytes(layout, bytes), own);
+	if (layout.aggregateBump) return maxAlign(tupleBytes) + maxAlign(perGroupBytes);
+	const values = perGroupBytes > 0 ? allocSetChunkBytes(layout, perGroupBytes) : 0;
+	return allocSetChunkBytes(layout, tupleBytes) + values;
+}
+
+/** Bytes of one group's states outside that. */
+export function stateBytes(layout: MemoryLayout, shape: GroupShape): number {
+	const wide = layout.pointerBytes === 8;
+	const payloads = shape.states.flatMap((state) => (wide ? state.bytes64 : state.bytes32));
+	const narrow = wide ? 0 : shape.transitions - shape.states.length;
+	return payloads.reduce(
+		(sum, bytes) => sum + allocSetChunkBytes(layout, bytes),
+		narrow * allocSetChunkBytes(layout, NARROW_STATE_32)
+	);
 }
 
 /** Bytes of the bucket array for so many groups. */
@@ -73,8 +87,14 @@ export function aggregateNeededKb(
 ): number {
 	const arrayKb = bucketArrayBytes(layout, groups) / BYTES_PER_KB;
 	const groupsKb = (groups * groupBytes(layout, shape)) / BYTES_PER_KB;
-	const workMemKb = Math.max(LEAST_WORK_MEM_KB, (arrayKb + groupsKb) / hashMemMultiplier);
-	return arrayKb + toContextBlocksKb(groupsKb, workMemKb) + CONTEXT_OVERHEAD_KB;
+	const statesKb = (groups * stateBytes(layout, shape)) / BYTES_PER_KB;
+	const workMemKb = Math.max(LEAST_WORK_MEM_KB, (arrayKb + groupsKb + statesKb) / hashMemMultiplier);
+	// One context holds both, unless tuples have a bump context to themselves.
+	const contexts = layout.aggregateBump ? [groupsKb, statesKb] : [groupsKb + statesKb];
+	return contexts.reduce(
+		(sum, usedKb) => sum + toContextBlocksKb(usedKb, workMemKb),
+		arrayKb + CONTEXT_OVERHEAD_KB
+	);
 }
 
 /** Memory that a context takes from the system for so many kB of chunks: blocks that double up to their largest, then whole ones of that. */

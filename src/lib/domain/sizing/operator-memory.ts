@@ -1,6 +1,6 @@
 import type { PlanOperator } from '../reading/operator';
 import type { Plan } from '../reading/reading';
-import { defaultHashMemMultiplier, DEFAULT_WORK_MEM_KB, postgresLayout, type MemoryLayout } from './layout';
+import { defaultHashMemMultiplier, DEFAULT_WORK_MEM_KB, type MemoryLayout } from './layout';
 import { readMemoryKb } from './units';
 
 /** What a plan says of the memory that its operators had. */
@@ -15,28 +15,19 @@ export interface MemoryGiven {
  * Memory settings of a plan. Settings list what differs from the default, so that a plan with any settings tells
  * work_mem; the multiplier of an operator with a known limit is that limit by work_mem.
  */
-export function readMemoryGiven(
-	plan: Plan,
-	version: number | null,
-	hashed: PlanOperator | null
-): MemoryGiven {
+export function readMemoryGiven(plan: Plan, layout: MemoryLayout, hashed: PlanOperator | null): MemoryGiven {
 	const set = plan.settings['work_mem'];
 	const limitKb = hashed?.memoryLimitKb ?? null;
 	const known = set !== undefined || Object.keys(plan.settings).length > 0 || limitKb !== null;
 	const workMemKb = known ? (set === undefined ? DEFAULT_WORK_MEM_KB : readMemoryKb(set)) : null;
 	return {
-		layout: postgresLayout(version),
+		layout,
 		workMemKb,
-		hashMemMultiplier: multiplierOf(plan, version, workMemKb, limitKb)
+		hashMemMultiplier: multiplierOf(plan, layout.version, workMemKb, limitKb)
 	};
 }
 
-function multiplierOf(
-	plan: Plan,
-	version: number | null,
-	workMemKb: number | null,
-	limitKb: number | null
-): number {
+function multiplierOf(plan: Plan, version: number, workMemKb: number | null, limitKb: number | null): number {
 	const set = Number(plan.settings['hash_mem_multiplier']);
 	if (set >= 1) return set;
 	if (workMemKb !== null && limitKb !== null && workMemKb > 0) return Math.max(1, limitKb / workMemKb);

@@ -42,7 +42,7 @@ export function sizeAggregate(aggregate: PlanOperator, given: MemoryGiven): Oper
 			valueKb: Math.max(LEAST_WORK_MEM_KB, Math.ceil(limitKb / hashMemMultiplier))
 		},
 		batches: Math.max(0, ...aggregate.facts.aggregates.map((each) => each.batches ?? 0)) || null,
-		basis: `Smallest work_mem that holds all groups${parallel ? ' of one process' : ''}; what the aggregates keep for each group is judged by the widths (nodeAgg.c, layout of ${layout.version}, 64-bit).`
+		basis: `Smallest work_mem that holds all groups${parallel ? ' of one process' : ''}; what the aggregates keep for each group is judged by the widths (nodeAgg.c, layout of ${given.layout.version}, ${given.layout.pointerBytes * 8}-bit).`
 	};
 }
 

@@ -1,7 +1,7 @@
 import type { PlanOperator } from '../reading/operator';
 import type { OperatorSizing } from '../reading/reading';
 import { hashNeededKb, hashWorkMemKb } from './hash';
-import { maxAlign, pow2Ceil } from './layout';
+import { maxAlign, pow2Ceil, type MemoryLayout } from './layout';
 import { observeHashWidth } from './observed-widths';
 import type { MemoryGiven } from './operator-memory';
 import { BYTES_PER_KB } from './units';
@@ -56,7 +56,7 @@ export function sizeHashJoin(
 		givenKb: hash.memoryLimitKb,
 		setting: { name: 'work_mem', valueKb: Math.ceil(Math.max(plannedKb, fittingKb)) },
 		batches: facts.hash?.batches ?? null,
-		basis: sayBasis(plannedKb >= fittingKb, observed !== null, participants, layout.version)
+		basis: sayBasis(plannedKb >= fittingKb, observed !== null, participants, layout)
 	};
 }
 
@@ -87,10 +87,10 @@ function observe(hash: PlanOperator, { layout }: MemoryGiven): number | null {
 	});
 }
 
-function sayBasis(byPlanner: boolean, observed: boolean, participants: number, version: number): string {
+function sayBasis(byPlanner: boolean, observed: boolean, participants: number, layout: MemoryLayout): string {
 	const rows = byPlanner
 		? 'the rows and width that the planner expects'
 		: `the rows that came${observed ? ' and their width as written' : ', their width rounded up'}`;
 	const shared = participants > 1 ? `, shared by ${participants} processes` : '';
-	return `Smallest work_mem for one batch, from ${rows}${shared} (nodeHash.c, layout of ${version}, 64-bit).`;
+	return `Smallest work_mem for one batch, from ${rows}${shared} (nodeHash.c, layout of ${layout.version}, ${layout.pointerBytes * 8}-bit).`;
 }

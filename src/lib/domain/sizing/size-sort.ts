@@ -4,16 +4,19 @@ import { allocSetChunkBytes, LEAST_WORK_MEM_KB, maxAlign, type MemoryLayout } fr
 import { observeSortedBytes } from './observed-widths';
 import type { MemoryGiven } from './operator-memory';
 import { MEASURED_MARGIN } from './size-hash-join';
-import { rowsHeld, sortChunkBytes, sortTupleBytes, tupleBytesFromDisk } from './sort';
+import { rowsHeld, sortChunkBytes, sortDiskBytes, sortTupleBytes, tupleBytesFromDisk } from './sort';
 import { BYTES_PER_KB } from './units';
 
 /** Rows of different lengths are rounded up to 8 bytes one by one, by 3.5 on average. */
 const MEAN_ROUNDING_BYTES = 3.5;
 /** A process may get this much more of a parallel scan in the next run than it got in this one. */
 const SHARE_MARGIN = 1.1;
-/** On tape, a sort of single by-value columns (15 and newer) writes the value and its length: 8 + 4 bytes. */
-const DATUM_BYTES_ON_TAPE = 12;
-const DATUM_TOLERANCE = 0.3;
+/** On tape a single column sorted without tuples is its value and a length word. */
+const LENGTH_WORD_BYTES = 4;
+const DATUM_TOLERANCE_BYTES = 0.3;
+/** Columns by value are sorted so from 15 on, others from some later version on: 18 does, 15 does not (both seen). */
+const FIRST_DATUM_SORTS = 15;
+const FIRST_REFERENCE_DATUM_SORTS = 16;
 
 /** Where a sort stands in its plan. */
 export interface SortPlace {
@@ -46,7 +49,7 @@ export function sizeSort(sort: PlanOperator, place: SortPlace, given: MemoryGive
 			valueKb: Math.max(LEAST_WORK_MEM_KB, Math.ceil(neededKb * MEASURED_MARGIN))
 		},
 		batches: null,
-		basis: `Smallest work_mem that holds the rows${shared}, from their number and their size on disk (tuplesort.c, layout of ${given.layout.version}, 64-bit).`
+		basis: `Smallest work_mem that holds the rows${shared}, from their number and their size on disk (tuplesort.c, layout of ${given.layout.version}, ${given.layout.pointerBytes * 8}-bit).`
 	};
 }
 
@@ -55,7 +58,8 @@ function bytesPerRow(sort: PlanOperator, place: SortPlace, layout: MemoryLayout)
 	const planned = sortTupleBytes(layout, sort.width ?? 0);
 	const written = writtenPerRow(sort, place, planned, layout);
 	if (written === null) return layout.sortSlotBytes + chunkBytes(layout, planned, place.underLimit);
-	if (isDatumSort(sort, written, layout)) return layout.sortSlotBytes;
+	const datumBytes = datumChunkBytes(sort, written, layout, place.underLimit);
+	if (datumBytes !== null) return layout.sortSlotBytes + datumBytes;
 	return layout.sortSlotBytes + chunkBytes(layout, tupleBytesFromDisk(written), place.underLimit);
 }
 
@@ -80,16 +84,24 @@ function writtenPerRow(
 	return observeSortedBytes(diskKb, place.inputRows - inMemoryRows);
 }
 
-/** A single by-value column is sorted without tuples. Its row on tape is shorter than any tuple of its width. */
-function isDatumSort(sort: PlanOperator, writtenBytes: number, layout: MemoryLayout): boolean {
-	if (
-		layout.version < 15 ||
-		sort.facts.sortKey.length !== 1 ||
-		(sort.width ?? 0) < 4 ||
-		(sort.width ?? 0) > 8
-	)
-		return false;
-	return Math.abs(writtenBytes - DATUM_BYTES_ON_TAPE) <= DATUM_TOLERANCE;
+/**
+ * Memory beside its slot of a single column that is sorted without tuples: none by value, else the value. Told by the bytes on tape,
+ * which leave out the tuple's header; null: it is a sort of tuples.
+ */
+function datumChunkBytes(
+	sort: PlanOperator,
+	writtenBytes: number,
+	layout: MemoryLayout,
+	bounded: boolean
+): number | null {
+	const width = sort.width ?? 0;
+	if (layout.version < FIRST_DATUM_SORTS || sort.facts.sortKey.length !== 1) return null;
+	const byValue = Math.abs(writtenBytes - LENGTH_WORD_BYTES - layout.pointerBytes) <= DATUM_TOLERANCE_BYTES;
+	if (byValue && width >= 4 && width <= 8) return 0;
+	if (layout.version < FIRST_REFERENCE_DATUM_SORTS) return null;
+	const asTuple = sortDiskBytes(layout, 1, width);
+	const nearer = Math.abs(writtenBytes - LENGTH_WORD_BYTES - width) < Math.abs(writtenBytes - asTuple);
+	return nearer ? chunkBytes(layout, writtenBytes - LENGTH_WORD_BYTES, bounded) : null;
 }
 
 /**

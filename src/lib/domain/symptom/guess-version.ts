@@ -8,6 +8,7 @@ const BY_FRACTIONS = 18;
 export function guessMajorVersion(plan: Plan): number | null {
 	const named = readMajorVersion(plan.engineVersion);
 	if (named !== null) return named;
+	if (plan.leastMajorVersion !== null) return plan.leastMajorVersion;
 	for (const { facts } of walkOperators(plan.root)) {
 		// "Storage" and fractions of rows came with 18 (release notes).
 		if (facts.storage !== null) return BY_FRACTIONS;

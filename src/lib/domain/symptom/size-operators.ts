@@ -1,5 +1,6 @@
 import type { PlanOperator } from '../reading/operator';
 import type { OperatorSizing, Plan } from '../reading/reading';
+import { postgresLayout, type MemoryLayout } from '../sizing/layout';
 import { readMemoryGiven } from '../sizing/operator-memory';
 import { sizeAggregate } from '../sizing/size-aggregate';
 import { sizeHashJoin } from '../sizing/size-hash-join';
@@ -16,11 +17,11 @@ const HANDS_BOUND_ON: readonly PlanOperator['kind'][] = ['gather', 'append', 'su
  * The memory that would have kept each spilling hash table, sort and aggregate of a plan in memory, largest setting first.
  * Empty where nothing spilled, without run-time figures, and for engines whose rule is not public.
  */
-export function sizeOperators(plan: Plan, tree: PlanTree): OperatorSizing[] {
+export function sizeOperators(plan: Plan, tree: PlanTree, pointerBytes: 4 | 8 = 8): OperatorSizing[] {
 	if (plan.engine !== 'postgresql' || !plan.hasRuntime) return [];
-	const version = guessMajorVersion(plan);
+	const layout = postgresLayout(guessMajorVersion(plan), pointerBytes);
 	return tree.operators
-		.flatMap((operator) => sizeOne(operator, plan, tree, version) ?? [])
+		.flatMap((operator) => sizeOne(operator, plan, tree, layout) ?? [])
 		.sort((one, other) => other.setting.valueKb - one.setting.valueKb);
 }
 
@@ -28,20 +29,20 @@ function sizeOne(
 	operator: PlanOperator,
 	plan: Plan,
 	tree: PlanTree,
-	version: number | null
+	layout: MemoryLayout
 ): OperatorSizing | null {
 	if (operator.kind === 'hash-build' && hasSpilled(operator)) {
 		const place = { workersPlanned: findWorkersPlanned(operator, tree) };
-		return sizeHashJoin(operator, place, readMemoryGiven(plan, version, operator));
+		return sizeHashJoin(operator, place, readMemoryGiven(plan, layout, operator));
 	}
 	if (operator.kind === 'sort' || operator.kind === 'incremental-sort') {
 		const [input] = operator.children;
 		if (input === undefined || input.actualRows === null) return null;
 		const place = { inputRows: input.actualRows, underLimit: isUnderLimit(operator, tree) };
-		return sizeSort(operator, place, readMemoryGiven(plan, version, null));
+		return sizeSort(operator, place, readMemoryGiven(plan, layout, null));
 	}
 	if (operator.kind === 'hash-aggregate' && hasAggregateSpilled(operator)) {
-		return sizeAggregate(operator, readMemoryGiven(plan, version, operator));
+		return sizeAggregate(operator, readMemoryGiven(plan, layout, operator));
 	}
 	return null;
 }

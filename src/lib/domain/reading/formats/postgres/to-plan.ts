@@ -1,7 +1,7 @@
 import { walkOperators } from '../../operator';
 import type { Plan, ReadingWarning } from '../../reading';
 import { fillMemoryLimits } from './memory-limits';
-import { figure, isRecord, records, words, type PlanEnvelope } from './plan-node';
+import { figure, isRecord, records, words, type PlanEnvelope, type PlanNode } from './plan-node';
 import { toOperators } from './postgres-operator';
 
 /** The plan in an envelope; null where it holds none. */
@@ -17,6 +17,7 @@ export function toPlan(envelope: PlanEnvelope, warnings: ReadingWarning[]): Plan
 		root,
 		engine: 'postgresql',
 		engineVersion: null,
+		leastMajorVersion: leastMajorVersion(node),
 		statementText: statement === null ? null : statement.trim(),
 		planningMs: figure(envelope['Planning Time']),
 		executionMs: figure(envelope['Execution Time']) ?? figure(envelope['Total Runtime']),
@@ -47,4 +48,10 @@ function jitOf(value: unknown): Plan['jit'] {
 function hasRuntime(root: Plan['root']): boolean {
 	for (const { loops } of walkOperators(root)) if (loops !== null) return true;
 	return false;
+}
+
+/** What only 18 and newer print: whether a node is disabled (always, in the structured forms), and rows with two decimals. */
+function leastMajorVersion(node: PlanNode): number | null {
+	const rows = node['Actual Rows'];
+	return node['Disabled'] !== undefined || (typeof rows === 'string' && rows.includes('.')) ? 18 : null;
 }
