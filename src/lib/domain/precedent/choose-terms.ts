@@ -1,3 +1,4 @@
+import { plainIdf, positiveIdf, SMALL_COLLECTION } from './bm25';
 import { findConcepts } from './trade-words';
 import { stemsOf, findNames } from './tokens';
 import { TRADE_STEMS } from './trade-stems';
@@ -11,7 +12,7 @@ export const MOST_TRADE_WORDS = 25;
  * commonest ones of a large collection, which say least and cost most.
  */
 export const DOCUMENTS_BUDGET = 60_000;
-/** A word in more than this part of all documents tells nothing apart; ideas are exempt. */
+/** In a large collection a word in more than this part of all documents tells nothing apart; ideas are exempt. */
 const TOO_COMMON = 0.5;
 
 /** How many times an idea is asked for: it counts that many times in BM25. Useful 1..2. */
@@ -47,7 +48,10 @@ export function chooseTerms(
 		.map((term) => ({ term, holders: documentsOf(term) }))
 		.filter(({ holders }) => holders > 0)
 		.sort((one, other) => one.holders - other.holders);
-	const words = known.filter(({ term, holders }) => !isIdea(term) && holders <= documents * TOO_COMMON);
+	const isSmall = documents <= SMALL_COLLECTION;
+	const words = known.filter(
+		({ term, holders }) => !isIdea(term) && (isSmall || holders <= documents * TOO_COMMON)
+	);
 	const rare = words.slice(0, RAREST_WORDS);
 	const trade = words.slice(RAREST_WORDS).filter(({ term }) => TRADE_STEMS.has(term));
 	const wanted = [
@@ -63,7 +67,8 @@ export function chooseTerms(
 		const times = isIdea(term) ? IDEAS_COUNT : 1;
 		chosen.terms.push(term);
 		chosen.asked.push(...Array<string>(times).fill(term));
-		chosen.weight += times * Math.max(0, Math.log((documents - holders + 0.5) / (holders + 0.5)));
+		const idf = isSmall ? positiveIdf(documents, holders) : Math.max(0, plainIdf(documents, holders));
+		chosen.weight += times * idf;
 	}
 	return chosen;
 }

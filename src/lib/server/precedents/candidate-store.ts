@@ -118,6 +118,12 @@ export async function readCandidates(numbers: readonly number[]): Promise<Candid
 	}));
 }
 
+/** Numbers of all incidents that are not merged into another: for small collections. */
+export async function listNumbers(): Promise<number[]> {
+	const rows = await select<{ number: number }>('SELECT number FROM incidents WHERE mergedInto IS NULL');
+	return rows.map((row) => row.number);
+}
+
 /** The texts of incidents that shared words are looked for in. */
 export async function readTexts(numbers: readonly number[]): Promise<Map<number, string>> {
 	if (numbers.length === 0) return new Map();

@@ -1,8 +1,11 @@
+import { scoreTexts, SMALL_COLLECTION } from '$lib/domain/precedent/bm25';
 import { chooseTerms, listTerms } from '$lib/domain/precedent/choose-terms';
 import { ANY_EVIDENCE, featuresOf, rarityFrom } from '$lib/domain/precedent/features';
 import type { Candidate, RankedPrecedent, Rarity } from '$lib/domain/precedent/precedent';
 import { NO_EVIDENCE, profileOf } from '$lib/domain/precedent/profile';
 import { rankPrecedents, type RankOptions } from '$lib/domain/precedent/rank';
+import { termsOf } from '$lib/domain/precedent/tokens';
+import { findConcepts } from '$lib/domain/precedent/trade-words';
 import { anyOf } from '$lib/domain/search/match-expression';
 import { LONGEST_TEXT } from '$lib/domain/search/index-text';
 import * as store from './candidate-store';
@@ -63,9 +66,26 @@ async function findByWords({
 	// A logged incident holds all of its own terms; they are worth asking for where another one does too.
 	const own = number === null ? 0 : 1;
 	const chosen = chooseTerms(terms, (term) => counts.of(term) - own, counts.documents);
-	const expression = anyOf(chosen.asked);
+	return { ...chosen, bm25: await scoreWords(chosen.asked, counts.documents) };
+}
+
+/** BM25 by incident, of the best ones. */
+async function scoreWords(asked: readonly string[], documents: number): Promise<ReadonlyMap<number, number>> {
+	if (documents <= SMALL_COLLECTION) return scoreTexts(asked, await readTerms());
+	const expression = anyOf(asked);
 	const matches = expression === null ? [] : await store.matchWords(expression, MOST_BY_WORDS);
-	return { ...chosen, bm25: new Map(matches.map(({ number, bm25 }) => [number, bm25])) };
+	return new Map(matches.map(({ number, bm25 }) => [number, bm25]));
+}
+
+/** The terms of every incident of a small collection. */
+async function readTerms(): Promise<Map<number, string[]>> {
+	const texts = await store.readTexts(await store.listNumbers());
+	return new Map(
+		[...texts].map(([number, text]) => [
+			number,
+			[...termsOf(text), ...findConcepts(text).map((idea) => idea.term)]
+		])
+	);
 }
 
 async function findByEvidence({ profile }: Asked): Promise<{ numbers: number[]; rarity: Rarity }> {

@@ -22,10 +22,14 @@ describe('chooseTerms', () => {
 	it('leaves out words that most documents have, but never the ideas', () => {
 		const chosen = chooseTerms(
 			['berth', 'slow', '~spill'],
-			counts({ berth: 2, slow: 80, '~spill': 80 }),
-			100
+			counts({ berth: 2, slow: 800, '~spill': 800 }),
+			1000
 		);
 		expect(chosen.terms).toEqual(['berth', '~spill']);
+	});
+
+	it('asks for any word in a small collection, where none is rare', () => {
+		expect(chooseTerms(['berth'], counts({ berth: 4 }), 5).terms).toEqual(['berth']);
 	});
 
 	it('takes the rarest of a long text, and the words of the trade beside them', () => {
