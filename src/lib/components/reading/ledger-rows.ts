@@ -1,6 +1,6 @@
 import type { Operator } from '$lib/domain/reading/operator';
 import { formatBytes, formatKb, formatMs, formatRows } from '$lib/domain/sizing/units';
-import { nameOperator, overflowFigures } from './operator-words';
+import { nameOperator } from './operator-words';
 
 /** One operator as a row of the ledger: every cell as text, empty where the evidence holds no figure. */
 export interface LedgerRow {
@@ -25,8 +25,10 @@ function write(value: number | null, format: (value: number) => string): string 
 	return value === null ? '' : format(value);
 }
 
+/** Used and allowed; a limit alone tells something only where it was overflowed. */
 function writeMemory(operator: Operator): string {
-	if (operator.memoryKb === null && operator.memoryLimitKb === null) return '';
+	const overflowed = (operator.temporaryBytes ?? 0) > 0 || (operator.batches ?? 1) > 1;
+	if (operator.memoryKb === null && (operator.memoryLimitKb === null || !overflowed)) return '';
 	const used = operator.memoryKb === null ? '?' : formatKb(operator.memoryKb);
 	return operator.memoryLimitKb === null ? used : `${used} / ${formatKb(operator.memoryLimitKb)}`;
 }
@@ -54,7 +56,7 @@ export function toLedgerRows(root: Operator, trail: ReadonlySet<string>): Ledger
 			temporary: operator.temporaryBytes === 0 ? '' : write(operator.temporaryBytes, formatBytes),
 			discarded: operator.discardedRows === 0 ? '' : write(operator.discardedRows, formatRows),
 			onTrail: trail.has(operator.path),
-			over: overflowFigures(operator, formatBytes) !== null
+			over: (operator.temporaryBytes ?? 0) > 0
 		});
 		for (let i = operator.children.length - 1; i >= 0; i--) {
 			const child = operator.children[i];

@@ -38,10 +38,14 @@ function trimBrackets(condition: string): string {
 
 /** What an operator did on disk: "8 batches, 55 MB"; null: nothing that the evidence shows. */
 export function overflowFigures(operator: Operator, formatBytes: (bytes: number) => string): string | null {
+	// A hash join and the build below it are one table that overflows: the engine splits its figures between them.
+	const build =
+		operator.kind === 'hash-join' ? operator.children.find(({ kind }) => kind === 'hash-build') : undefined;
+	const batches = operator.batches ?? build?.batches ?? null;
+	const bytes = (operator.temporaryBytes ?? 0) + (build?.temporaryBytes ?? 0);
 	const parts: string[] = [];
-	if (operator.batches !== null && operator.batches > 1) parts.push(`${operator.batches} batches`);
-	if (operator.temporaryBytes !== null && operator.temporaryBytes > 0)
-		parts.push(`${formatBytes(operator.temporaryBytes)} on disk`);
+	if (batches !== null && batches > 1) parts.push(`${batches} batches`);
+	if (bytes > 0) parts.push(`${formatBytes(bytes)} on disk`);
 	return parts.length > 0 ? parts.join(', ') : null;
 }
 

@@ -17,13 +17,14 @@ export function sayWhatOverflows(reading: Reading): string {
 		: 'No temporary file in this log.';
 }
 
-/** The operators that the sentence should set off: where the trail begins and where it overflows. */
+/** The operators that the sentence should set off: where the trail begins and wherever it overflows. */
 export function wordsToMark(reading: Reading, operators: ReadonlyMap<string, Operator>): string[] {
 	const trail = reading.trails[0];
 	if (trail === undefined) return [];
-	const paths = [trail.steps[0]?.operator, trail.overflow ?? trail.steps.at(-1)?.operator];
-	return paths.flatMap((path) => {
-		const operator = path === undefined ? undefined : operators.get(path);
-		return operator === undefined ? [] : [phraseOperator(operator)];
-	});
+	const first = trail.steps[0]?.operator;
+	const last = trail.overflow ?? trail.steps.at(-1)?.operator;
+	const operatorsOfTrail = trail.steps.flatMap(({ operator }) => operators.get(operator) ?? []);
+	return operatorsOfTrail
+		.filter(({ path, temporaryBytes }) => path === first || path === last || (temporaryBytes ?? 0) > 0)
+		.map(phraseOperator);
 }

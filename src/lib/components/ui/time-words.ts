@@ -67,9 +67,18 @@ export function writeSpan(fromIso: string, toIso: string): string {
 	return `${days} d${hours > 0 ? ` ${hours} h` : ''}`;
 }
 
-/** How long ago, in words: "just now", "12 min ago", "41 days ago"; a moment to come: "in 3 d". */
+/** A span in its largest unit alone, for how long ago: "38 min", "23 h", "2 days". */
+function writeRoughSpan(ms: number): string {
+	if (ms < HOUR_MS) return `${Math.floor(ms / MINUTE_MS)} min`;
+	if (ms < DAY_MS) return `${Math.floor(ms / HOUR_MS)} h`;
+	const days = Math.floor(ms / DAY_MS);
+	return days === 1 ? '1 day' : `${days} days`;
+}
+
+/** How long ago, in words: "just now", "12 min ago", "41 days ago"; a moment to come: "in 3 days". */
 export function writeAgo(iso: string, now: string): string {
 	const ms = Date.parse(now) - Date.parse(iso);
 	if (Math.abs(ms) < MINUTE_MS) return 'just now';
-	return ms > 0 ? `${writeSpan(iso, now)} ago` : `in ${writeSpan(now, iso)}`;
+	const span = writeRoughSpan(Math.abs(ms));
+	return ms > 0 ? `${span} ago` : `in ${span}`;
 }
