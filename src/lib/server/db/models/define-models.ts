@@ -9,6 +9,9 @@ import { IdempotencyKeyModel } from './idempotency-key';
 import { IncidentModel } from './incident';
 import { IncidentRevisionModel } from './incident-revision';
 import { IncidentSymptomModel } from './incident-symptom';
+import { InvitationModel } from './invitation';
+import { MailModel } from './mail';
+import { PasswordResetModel } from './password-reset';
 import { PersonModel } from './person';
 import { ReadingModel } from './reading';
 import { RunbookModel } from './runbook';
@@ -29,6 +32,9 @@ const MODELS = [
 	IncidentModel,
 	IncidentRevisionModel,
 	IncidentSymptomModel,
+	InvitationModel,
+	MailModel,
+	PasswordResetModel,
 	PersonModel,
 	ReadingModel,
 	RunbookModel,

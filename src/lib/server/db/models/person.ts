@@ -20,6 +20,8 @@ export class PersonModel extends Model<InferAttributes<PersonModel>, InferCreati
 	declare createdAt: string;
 	declare deactivatedAt: string | null;
 	declare revision: number;
+	/** null: never, or before it was kept. */
+	declare lastSignInAt: CreationOptional<string | null>;
 
 	static define(sequelize: Sequelize): void {
 		PersonModel.init(
@@ -31,7 +33,8 @@ export class PersonModel extends Model<InferAttributes<PersonModel>, InferCreati
 				passwordHash: textOrNull(),
 				createdAt: text(),
 				deactivatedAt: textOrNull(),
-				revision: integer()
+				revision: integer(),
+				lastSignInAt: textOrNull()
 			},
 			{ sequelize, modelName: 'PersonModel', tableName: 'people' }
 		);
