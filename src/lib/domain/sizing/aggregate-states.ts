@@ -44,9 +44,14 @@ export function guessGroupShape(widths: AggregateWidths): GroupShape {
 	if (best === null) return { keyBytes: Math.min(inputBytes, outputBytes), transitions: 1, states: [] };
 	return {
 		keyBytes: inputBytes - best.argumentBytes,
-		transitions: best.wide + best.narrow,
+		transitions: countTransitions(best),
 		states: Array.from({ length: best.wide }, () => stateOf(best))
 	};
+}
+
+/** A lone count(*) and a count with a 4-byte result beside it leave the same widths: room for two, so that it never falls short. */
+function countTransitions({ wide, narrow }: Split): number {
+	return wide === 0 && narrow === 1 ? 2 : wide + narrow;
 }
 
 function isPlausible(split: Split): boolean {

@@ -13,7 +13,6 @@ const MEAN_ROUNDING_BYTES = 3.5;
 const SHARE_MARGIN = 1.1;
 /** On tape a single column sorted without tuples is its value and a length word. */
 const LENGTH_WORD_BYTES = 4;
-const DATUM_TOLERANCE_BYTES = 0.3;
 /** Columns by value are sorted so from 15 on, others from some later version on: 18 does, 15 does not (both seen). */
 const FIRST_DATUM_SORTS = 15;
 const FIRST_REFERENCE_DATUM_SORTS = 16;
@@ -96,12 +95,13 @@ function datumChunkBytes(
 ): number | null {
 	const width = sort.width ?? 0;
 	if (layout.version < FIRST_DATUM_SORTS || sort.facts.sortKey.length !== 1) return null;
-	const byValue = Math.abs(writtenBytes - LENGTH_WORD_BYTES - layout.pointerBytes) <= DATUM_TOLERANCE_BYTES;
-	if (byValue && width >= 4 && width <= 8) return 0;
-	if (layout.version < FIRST_REFERENCE_DATUM_SORTS) return null;
 	const asTuple = sortDiskBytes(layout, 1, width);
-	const nearer = Math.abs(writtenBytes - LENGTH_WORD_BYTES - width) < Math.abs(writtenBytes - asTuple);
-	return nearer ? chunkBytes(layout, writtenBytes - LENGTH_WORD_BYTES, bounded) : null;
+	const isNearer = (asDatum: number) => Math.abs(writtenBytes - asDatum) < Math.abs(writtenBytes - asTuple);
+	if (width >= 4 && width <= 8 && isNearer(LENGTH_WORD_BYTES + layout.pointerBytes)) return 0;
+	if (layout.version < FIRST_REFERENCE_DATUM_SORTS) return null;
+	return isNearer(LENGTH_WORD_BYTES + width)
+		? chunkBytes(layout, writtenBytes - LENGTH_WORD_BYTES, bounded)
+		: null;
 }
 
 /**

@@ -62,11 +62,18 @@ describe('groupBytes', () => {
 });
 
 describe('guessGroupShape', () => {
-	test('reads count(*) from an output 8 bytes wider than the key', () => {
+	test('leaves room for two results where the output is 8 bytes wider than the key', () => {
 		expect(guessGroupShape({ inputBytes: 12, outputBytes: 20, keys: 1 })).toEqual({
 			keyBytes: 12,
-			transitions: 1,
+			transitions: 2,
 			states: []
+		});
+	});
+
+	test('reads no aggregate at all from DISTINCT', () => {
+		expect(guessGroupShape({ inputBytes: 10, outputBytes: 10, keys: 1 })).toMatchObject({
+			keyBytes: 10,
+			transitions: 0
 		});
 	});
 
