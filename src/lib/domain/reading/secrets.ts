@@ -15,6 +15,13 @@ const NAMED = new RegExp(
 	'gi'
 );
 
+const NAME = new RegExp(`^${NAMES}$`, 'i');
+
+/** Whether a key names a secret, so that its value is one whatever it looks like. */
+export function isSecretName(key: string): boolean {
+	return NAME.test(key);
+}
+
 type Replacement = string | ((all: string, name: string, value: string) => string);
 
 const RULES: readonly [RegExp, Replacement][] = [

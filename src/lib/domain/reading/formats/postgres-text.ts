@@ -10,7 +10,7 @@ export const postgresText: TextFormat = {
 	format: 'postgres-text',
 	engine: 'postgresql',
 	kind: 'plan',
-	recognise: (head) => FIGURES.test(head) || ARROW.test(head) || isBarePlan(head),
+	recognise: (head) => !OTHER_TREE.test(head) && (FIGURES.test(head) || ARROW.test(head) || isBarePlan(head)),
 	mask: maskTextPlan,
 	read: readPostgresText
 };
@@ -19,6 +19,10 @@ const FIGURES =
 	/\((?:cost=\d+\.\d+\.\.\d+\.\d+ rows=|actual (?:time=[\d.]+ )?rows=\d|actual time=[\d.]+ rows=|never executed\))/;
 const ARROW =
 	/^[\s>|\u2502]*->\s+(?:Parallel )?(?:Seq|Index|Bitmap|Hash|Sort|Nested|Merge|Materialize|Aggregate|CTE|Function|Result)\b/m;
+
+/** MySQL prints its plans with arrows and figures of the same shape; its operators are named otherwise. */
+const OTHER_TREE =
+	/-> (?:Table scan|Nested loop|Filter:|Sort:|Limit:|Index (?:lookup|scan|range)|Covering index|Single-row|Inner hash|Left hash|Stream results|Select #|Rows fetched)|\(cost=\d+(?:\.\d+)?(?:e\+?\d+)? rows=/;
 
 /** COSTS OFF leaves names alone: one of an operator, and under it, if anything, what stands below an operator. */
 function isBarePlan(head: string): boolean {

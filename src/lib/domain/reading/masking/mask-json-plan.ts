@@ -1,11 +1,11 @@
 import { maskStatement } from '../mask-literals';
-import { maskSecrets } from '../secrets';
+import { isSecretName, MASKED, maskSecrets } from '../secrets';
 import { maskTextPlan } from './mask-text-plan';
 import { isPlainKey } from './plan-keys';
 
 /** A JSON plan with its literals masked; layout, keys and figures stay. Works on damaged and decorated text. */
 export function maskJsonPlan(text: string): string {
-	return maskSecrets(hasWordsAround(text) ? maskParts(text) : maskDocument(text));
+	return hasWordsAround(text) ? maskParts(text) : maskDocument(text);
 }
 
 /** Something else than JSON before, between or behind. */
@@ -48,39 +48,64 @@ function maskParts(text: string): string {
 	return out.join('\n');
 }
 
-/** Every string of a JSON text, also one that the end of the text cuts off, and the colon that makes it a key. */
-const STRING = /"((?:[^"\\]|\\[^])*)(?:"(?:[ \t]*\n?[ \t+]*(:))?|\\?$)/g;
-
+/** Goes from string to string: behind a key stands a colon, the strings behind it are its values. */
 function maskDocument(text: string): string {
-	let key = '';
+	let plain = true;
+	let secret = false;
 	let settingsEnd = -1;
 	let out = '';
 	let done = 0;
-	const pattern = new RegExp(STRING);
-	for (let match = pattern.exec(text); match !== null; match = pattern.exec(text)) {
-		const raw = match[1] ?? '';
-		if (match[2] !== undefined) {
-			key = raw;
-			if (key === 'Settings') settingsEnd = text.indexOf('}', pattern.lastIndex);
-		} else if (match.index >= settingsEnd && !isPlainKey(key)) {
-			const masked = maskString(raw);
+	for (let at = text.indexOf('"'); at >= 0;) {
+		const end = endOfString(text, at + 1);
+		const raw = text.slice(at + 1, end);
+		const colon = colonBehind(text, end + 1);
+		if (colon >= 0) {
+			plain = isPlainKey(raw);
+			secret = !plain && isSecretName(raw);
+			if (raw === 'Settings') settingsEnd = text.indexOf('}', colon);
+		} else if (!plain && at >= settingsEnd) {
+			const masked = secret ? MASKED : maskString(raw);
 			if (masked !== raw) {
-				out += text.slice(done, match.index + 1) + masked;
-				done = match.index + 1 + raw.length;
+				out += text.slice(done, at + 1) + masked;
+				done = end;
 			}
 		}
-		if (pattern.lastIndex === match.index) pattern.lastIndex++;
+		at = end >= text.length ? -1 : text.indexOf('"', end + 1);
 	}
-	const masked = out + text.slice(done);
+	const masked = done === 0 ? text : out + text.slice(done);
 	// A quotation mark that was lost turns the inside of a string into its outside.
 	return masked.includes("'") ? masked.replace(/'(?:[^'"\\\n]|'')*'/g, '?') : masked;
+}
+
+/** Offset of the closing quotation mark; the end of the text where it was cut off. */
+function endOfString(text: string, from: number): number {
+	for (let end = text.indexOf('"', from); end >= 0; end = text.indexOf('"', end + 1)) {
+		let slashes = 0;
+		while (text.charCodeAt(end - 1 - slashes) === BACKSLASH && end - 1 - slashes >= from) slashes++;
+		if (slashes % 2 === 0) return end;
+	}
+	return text.length;
+}
+
+const [TAB, LINE_END, BLANK, PLUS, COLON, BACKSLASH] = [9, 10, 32, 43, 58, 92];
+
+/** Offset of the colon behind a key, perhaps on the next line; -1: what stood before is a value. */
+function colonBehind(text: string, from: number): number {
+	for (let at = from; at < text.length; at++) {
+		const code = text.charCodeAt(at);
+		if (code === COLON) return at;
+		if (code !== BLANK && code !== TAB && code !== LINE_END && code !== PLUS) return -1;
+	}
+	return -1;
 }
 
 function maskString(raw: string): string {
 	const value = raw.includes('\\') ? unquote(raw) : raw;
 	// A client may have put the whole plan into one string of a row.
 	const masked =
-		/^\s*[[{]/.test(value) && value.includes('"Node Type"') ? maskDocument(value) : maskStatement(value);
+		/^\s*[[{]/.test(value) && value.includes('"Node Type"')
+			? maskDocument(value)
+			: maskSecrets(maskStatement(value));
 	return masked === value ? raw : JSON.stringify(masked).slice(1, -1);
 }
 

@@ -11,11 +11,12 @@ const PLAIN_LINES = [
 	/^[\s>]*\(\d+ [^()='"\d]+\)\s*$/,
 	/^\s*(?:Time|\u0412\u0440\u0435\u043c\u044f|Zeit|Dur\u00e9e|Temps|Duraci\u00f3n|Tiempo)\s?: [\d.,]+ \w+(?: \([\d:.,]+\))?\s*$/,
 	/^[\s>|\u2502]*(?:InitPlan|SubPlan) \S+(?: \(returns [$\d, ]*\))?[\s|\u2502]*$/,
-	/^[\s>|\u2502]*(?:JIT for worker \d+|Trigger [^:']*: (?:time=[\d.]+ )?calls=\d+)/,
-	/^\s*(?:[\w :.,[\]-]*LOG: {1,2})?duration: [\d.]+ ms {1,2}plan:\s*$/
+	/^[\s>|\u2502]*(?:JIT for worker \d+|Trigger [^:']*: (?:time=[\d.]+ )?calls=\d+)/
 ];
 const PROPERTY = /^([\s>|\u2502]*(?:Worker \d+: {1,2})?)([A-Z][A-Za-z0-9/ -]{0,40}?):(?=\s|$)/;
 const SETTINGS = /^[\s>|\u2502]*Settings: /;
+/** Lines of names and figures are shorter; a longer one is masked, whatever it looks like. */
+const PLAIN_LENGTH = 2_000;
 /** How many lines a literal may span before its quote counts as never closed. */
 const LITERAL_LINES = 200;
 
@@ -28,7 +29,7 @@ export function maskTextPlan(text: string): string {
 	const out: string[] = [];
 	let between: string[] = [];
 	const flush = () => {
-		if (between.length > 0) out.push(maskStatement(between.join('\n')));
+		if (between.length > 0) out.push(maskSecrets(maskStatement(between.join('\n'))));
 		between = [];
 	};
 	for (let i = 0; i < lines.length; i++) {
@@ -47,23 +48,25 @@ export function maskTextPlan(text: string): string {
 		if (isPlainKey(property[2] ?? '') || SETTINGS.test(line)) out.push(line);
 		else {
 			const end = endOfLiteral(lines, i, property[0].length);
-			out.push(
-				property[0] +
-					maskStatement(
-						lines
-							.slice(i, end + 1)
-							.join('\n')
-							.slice(property[0].length)
-					)
-			);
+			const value = lines
+				.slice(i, end + 1)
+				.join('\n')
+				.slice(property[0].length);
+			out.push(maskSecrets(property[0] + maskStatement(value)));
 			i = end;
 		}
 	}
 	flush();
-	return maskSecrets(out.join('\n'));
+	return out.join('\n');
 }
 
+/** What stands above a plan of auto_explain. */
+const DURATION = /\bduration: [\d.]+ ms {1,2}plan:\s*$/;
+
 function isPlainLine(line: string): boolean {
+	if (line.length > PLAIN_LENGTH) return false;
+	if (line.includes(' plan:') && DURATION.test(line))
+		return !/['"$@]/.test(line) && maskSecrets(line) === line;
 	return PLAIN_LINES.some((pattern) => pattern.test(line));
 }
 

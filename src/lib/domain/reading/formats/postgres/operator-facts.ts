@@ -128,7 +128,14 @@ function readExtra(node: PlanNode, facts: OperatorFacts): void {
 		if (KNOWN.has(key)) continue;
 		const value = node[key];
 		// The text form leaves these out.
-		if (value === false || value === 0 || value === 'false' || value === 'Forward' || isRecord(value))
+		if (
+			value === false ||
+			value === 0 ||
+			value === '0' ||
+			value === 'false' ||
+			value === 'Forward' ||
+			isRecord(value)
+		)
 			continue;
 		if (typeof value === 'string' || typeof value === 'number' || value === true)
 			facts.extra[key] = String(value);

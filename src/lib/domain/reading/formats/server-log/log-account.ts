@@ -9,8 +9,8 @@ import { Tally } from './tally';
 const PLANS = 500;
 /** Server processes remembered at a time; the oldest goes first. */
 const PROCESSES = 5_000;
-/** The creator and the last number of "temporary file: path "…/pgsql_tmp12784.0", size 6594560", in any language. */
-const TEMPORARY_FILE = /pgsql_tmp\/?(?:pgsql_tmp)?(\d+)\.[^\n]*?[^\d.\w](\d+)\s*$/;
+/** The last number of "temporary file: path "…/pgsql_tmp12784.0", size 6594560", in any language. */
+const TEMPORARY_FILE = /pgsql_tmp\d+\.[^\n]*?[^\d.\w](\d+)\s*$/;
 const AUTHORIZED = /\buser=(\S+)(?: database=(\S+))?(?: application_name=(.*?))?(?: SSL|\s*$)/;
 const VERSION = /\bPostgreSQL (\d+(?:\.\d+)?)\b/;
 
@@ -51,8 +51,8 @@ export class LogAccount {
 			this.ledger.countEvent();
 			return;
 		}
-		const bytes = Number(match[2]);
-		const process = this.processOf(who.pid ?? match[1] ?? '');
+		const bytes = Number(match[1]);
+		const process = this.processOf(who.pid ?? '');
 		this.ledger.countFile(bytes);
 		const at = this.timeOf(who.time);
 		process.open ??= { files: 0, bytes: 0, firstAt: at, lastAt: at };
