@@ -6,7 +6,7 @@ import { compareStatements } from './parts/statement';
 import { compareSymptoms } from './parts/symptoms';
 import { compareByVerdict } from './parts/verdict';
 import { compareWords } from './parts/words';
-import { ONLY_TOLD_COUNTS, PART_WEIGHTS, REFUSED_KEEPS, TIE } from './weights';
+import { ONLY_TOLD_COUNTS, PART_WEIGHTS, REFUSED_KEEPS, SAME_STATEMENT_COUNTS, TIE } from './weights';
 
 export interface RankOptions {
 	limit: number;
@@ -71,12 +71,13 @@ function scoreCandidate(
 	const respects = REASON_KINDS.filter(
 		(kind) => asked.has(kind) || (kind === 'verdict' && likeness.verdict !== null)
 	);
-	const all = respects.reduce((sum, kind) => sum + (weights[kind] ?? 0), 0);
+	const weightOf = (kind: ReasonKind) =>
+		(weights[kind] ?? 0) * (kind === 'statement' && likeness.statement === 1 ? SAME_STATEMENT_COUNTS : 1);
+	const all = respects.reduce((sum, kind) => sum + weightOf(kind), 0);
 	const kept = candidate.verdict === 'not' ? REFUSED_KEEPS : 1;
 	const contributions = { words: 0, symptoms: 0, cause: 0, statement: 0, setting: 0, verdict: 0 };
 	if (all > 0) {
-		for (const kind of respects)
-			contributions[kind] = (kept * (weights[kind] ?? 0) * (likeness[kind] ?? 0)) / all;
+		for (const kind of respects) contributions[kind] = (kept * weightOf(kind) * (likeness[kind] ?? 0)) / all;
 	}
 	const score = REASON_KINDS.reduce((sum, kind) => sum + contributions[kind], 0);
 	return { candidate, score, likeness, contributions };

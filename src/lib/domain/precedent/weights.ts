@@ -10,11 +10,11 @@ import type { ReasonKind } from './precedent';
  * asked about can be compared on. Each 0..1; 0 switches a part off.
  */
 export const PART_WEIGHTS: Readonly<Record<ReasonKind, number>> = {
-	/** Useful 0.1..0.4. Higher: old tales with the same words come before new ones with the same fault. */
+	/** Useful 0.1..0.3. Higher: old tales with the same words come before new ones with the same fault. */
 	words: 0.13,
 	/** Useful 0.2..0.5. Higher: what is seen counts more than why it happened. */
-	symptoms: 0.3,
-	/** Useful 0.15..0.4. Higher: one wrong guess of the rules pulls more wrong precedents up. */
+	symptoms: 0.4,
+	/** Useful 0.3..0.8. Higher: one wrong guess of the rules pulls more wrong precedents up. */
 	cause: 0.6,
 	/** Useful 0.1..0.3. Higher: plans of one shape meet although their faults differ. */
 	statement: 0.13,
@@ -67,6 +67,9 @@ export const DOUBT_AFTER_CONFIRMATION = 0.25;
 export const TRAITS_COUNT = 0.45;
 export const SHAPE_COUNTS = 0.2;
 export const RELATIONS_COUNT = 0.15;
+
+/** How many times the statement counts when it is the very same one: that is hardly ever chance. Useful 1..5. */
+export const SAME_STATEMENT_COUNTS = 4;
 
 /** Same service, engine, database; they add up to 1. */
 export const SERVICE_COUNTS = 0.4;

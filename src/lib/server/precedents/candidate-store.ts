@@ -59,9 +59,10 @@ export async function matchWords(
 /** In how many incidents each of the features occurs; those that none has are missing. */
 export async function countFeatures(features: readonly string[]): Promise<Map<string, number>> {
 	if (features.length === 0) return new Map();
+	// As JSON: a list of parameters may not be as long as the features of all candidates together.
 	const rows = await select<{ feature: string; incidents: number }>(
-		'SELECT feature, incidents FROM precedentFeatures WHERE feature IN (:features)',
-		{ features: [...features] }
+		'SELECT f.feature, f.incidents FROM json_each(:features) w JOIN precedentFeatures f ON f.feature = w.value',
+		{ features: JSON.stringify(features) }
 	);
 	return new Map(rows.map((row) => [row.feature, row.incidents]));
 }

@@ -1,7 +1,7 @@
 import { scoreTexts, SMALL_COLLECTION } from '$lib/domain/precedent/bm25';
 import { chooseTerms, listTerms } from '$lib/domain/precedent/choose-terms';
 import { ANY_EVIDENCE, featuresOf, rarityFrom } from '$lib/domain/precedent/features';
-import type { Candidate, RankedPrecedent, Rarity } from '$lib/domain/precedent/precedent';
+import type { Candidate, EvidenceProfile, RankedPrecedent, Rarity } from '$lib/domain/precedent/precedent';
 import { NO_EVIDENCE, profileOf } from '$lib/domain/precedent/profile';
 import { rankPrecedents, type RankOptions } from '$lib/domain/precedent/rank';
 import { termsOf } from '$lib/domain/precedent/tokens';
@@ -37,15 +37,16 @@ export async function findRanked(
 	limit: number,
 	weights?: RankOptions['weights']
 ): Promise<Found> {
-	const [words, evidence] = await Promise.all([findByWords(asked), findByEvidence(asked)]);
-	const numbers = new Set([...words.bm25.keys(), ...evidence.numbers]);
+	const [words, byEvidence] = await Promise.all([findByWords(asked), findByEvidence(asked)]);
+	const numbers = new Set([...words.bm25.keys(), ...byEvidence]);
 	if (asked.number !== null) numbers.delete(asked.number);
 	const rows = await store.readCandidates([...numbers]);
+	const rarity = await weighFeatures([asked.profile, ...rows.map((row) => row.evidence ?? NO_EVIDENCE)]);
 	const candidates = rows.map((row) => toCandidate(row, words.bm25.get(row.number) ?? null));
 	const ranked = rankPrecedents(
 		{ profile: asked.profile, bestBm25: words.weight },
 		candidates,
-		evidence.rarity,
+		rarity,
 		weights === undefined ? { limit } : { limit, weights }
 	);
 	return {
@@ -53,7 +54,7 @@ export async function findRanked(
 		rows: new Map(rows.map((row) => [row.number, row])),
 		terms: words.terms,
 		best: words.weight,
-		rarity: evidence.rarity
+		rarity
 	};
 }
 
@@ -88,7 +89,8 @@ async function readTerms(): Promise<Map<number, string[]>> {
 	);
 }
 
-async function findByEvidence({ profile }: Asked): Promise<{ numbers: number[]; rarity: Rarity }> {
+/** Numbers of the incidents that share the most, and the rarest, of the evidence. */
+async function findByEvidence({ profile }: Asked): Promise<number[]> {
 	const features = featuresOf(profile);
 	const counts = await store.countFeatures([ANY_EVIDENCE, ...features]);
 	const rarity = rarityFrom(counts, counts.get(ANY_EVIDENCE) ?? 0);
@@ -100,7 +102,14 @@ async function findByEvidence({ profile }: Asked): Promise<{ numbers: number[]; 
 	const wanted = known.filter(
 		({ incidents }, index) => (led += incidents) <= INCIDENTS_BUDGET || index === 0
 	);
-	return { numbers: await store.matchFeatures(wanted, MOST_BY_EVIDENCE), rarity };
+	return store.matchFeatures(wanted, MOST_BY_EVIDENCE);
+}
+
+/** How rare each feature is that any of the profiles has. */
+async function weighFeatures(profiles: readonly EvidenceProfile[]): Promise<Rarity> {
+	const features = new Set([ANY_EVIDENCE, ...profiles.flatMap(featuresOf)]);
+	const counts = await store.countFeatures([...features]);
+	return rarityFrom(counts, counts.get(ANY_EVIDENCE) ?? 0);
 }
 
 function toCandidate(row: store.CandidateRow, bm25: number | null): Candidate {

@@ -1,6 +1,11 @@
-import { SYMPTOM_IDS, type SymptomId } from '$lib/domain/symptom/symptom';
+import { SYMPTOM_CATALOGUE } from '$lib/domain/symptom/catalogue';
+import type { SymptomId } from '$lib/domain/symptom/symptom';
 
 /** What the symptoms' pages are found by. */
 export function listSymptomTexts(): { id: SymptomId; title: string; texts: string[] }[] {
-	return SYMPTOM_IDS.map((id) => ({ id, title: id.replaceAll('-', ' '), texts: [] }));
+	return Object.values(SYMPTOM_CATALOGUE).map(({ id, title, what, recognise }) => ({
+		id,
+		title,
+		texts: [what, recognise]
+	}));
 }
