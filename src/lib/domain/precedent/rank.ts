@@ -6,7 +6,14 @@ import { compareStatements } from './parts/statement';
 import { compareSymptoms } from './parts/symptoms';
 import { compareByVerdict } from './parts/verdict';
 import { compareWords } from './parts/words';
-import { ONLY_TOLD_COUNTS, PART_WEIGHTS, REFUSED_KEEPS, SAME_STATEMENT_COUNTS, TIE } from './weights';
+import {
+	ONLY_TOLD_CAUSES,
+	ONLY_TOLD_SYMPTOMS,
+	PART_WEIGHTS,
+	REFUSED_KEEPS,
+	SAME_STATEMENT_COUNTS,
+	TIE
+} from './weights';
 
 export interface RankOptions {
 	limit: number;
@@ -42,8 +49,8 @@ function weighParts({ profile }: Question, weights: Weights): Weights {
 	const isGiven = profile.causes.length > 0 || profile.confirmedCause !== null;
 	return {
 		...weights,
-		symptoms: (weights.symptoms ?? 0) * (isShown ? 1 : ONLY_TOLD_COUNTS),
-		cause: (weights.cause ?? 0) * (isGiven ? 1 : ONLY_TOLD_COUNTS)
+		symptoms: (weights.symptoms ?? 0) * (isShown ? 1 : ONLY_TOLD_SYMPTOMS),
+		cause: (weights.cause ?? 0) * (isGiven ? 1 : ONLY_TOLD_CAUSES)
 	};
 }
 

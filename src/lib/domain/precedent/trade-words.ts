@@ -133,7 +133,7 @@ export const CONCEPTS: readonly Concept[] = [
 	concept(
 		'correlated',
 		'columns that depend on each other',
-		/\bcorrelat|\bindependent\b|\bfunctional(?:ly)? dependen|\bdepend(?:s|ent|encies) (?:on|columns?)?|\bcreate statistics\b|\bextended statistics\b|\bmcv\b|\bndistinct\b|\bfollows? from\b|\bmultipl(?:y|ies|ied)\b|\bsay the same\b/
+		/\bcorrelat|\bindependent\b|\bfunctional(?:ly)? dependen|\bdependen(?:t columns|cies)\b|\bdepend on each other\b|\bcreate statistics\b|\bextended statistics\b|\bmcv\b|\bndistinct\b|\bfollows? from\b|\bmultiplied as (?:though|if)\b|\bsay the same\b/
 	),
 	concept(
 		'distinct-count',
@@ -241,6 +241,8 @@ export const CONCEPTS: readonly Concept[] = [
 ];
 
 const CLAUSE_END = /[.;:!?\n]+\s|[\n()"]|,\s+(?:but|and)\s|\sbut\s/;
+/** Marks a clause that was a question: what somebody only wondered about ("Then bloat?"). */
+const DOUBTED = ' ¿';
 /** A denial reaches this many characters ahead within its clause. */
 const DENIAL_REACH = 45;
 const DENIAL =
@@ -251,7 +253,11 @@ const DENIAL =
  * temporary file line", "no relation to parallel query"), because the night shift writes down what it ruled out.
  */
 export function findConcepts(text: string): Concept[] {
-	const clauses = text.toLowerCase().replaceAll('’', "'").split(CLAUSE_END);
+	const marked = text
+		.toLowerCase()
+		.replaceAll('’', "'")
+		.replaceAll(/\?(?!!)/g, `${DOUBTED}. `);
+	const clauses = marked.split(CLAUSE_END);
 	return CONCEPTS.filter((idea) => clauses.some((clause) => clause !== undefined && isSaidIn(clause, idea)));
 }
 
@@ -259,6 +265,7 @@ function isSaidIn(clause: string, idea: Concept): boolean {
 	const met = idea.says.exec(clause);
 	if (met === null) return false;
 	if (idea.ownsNegation) return true;
+	if (clause.endsWith(DOUBTED)) return false;
 	for (const denial of clause.slice(0, met.index).matchAll(DENIAL)) {
 		if (met.index - denial.index <= DENIAL_REACH) return false;
 	}

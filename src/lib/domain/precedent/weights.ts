@@ -43,8 +43,10 @@ export const TOLD_COUNTS = 0.4;
 
 /** What a lack of run-time figures counts beside a fault: it says how the plan was taken. Useful 0..0.5. */
 export const LACK_COUNTS = 0.25;
-/** What the symptoms as a whole count where the one asked about has only told ones. Useful 0.1..0.6. */
-export const ONLY_TOLD_COUNTS = 0.35;
+/** What symptoms as a whole count where the one asked about has only told ones. Useful 0.1..0.5. */
+export const ONLY_TOLD_SYMPTOMS = 0.25;
+/** What causes as a whole count where the one asked about has only told ones. Useful 0.2..0.6. */
+export const ONLY_TOLD_CAUSES = 0.4;
 
 /** Power that confidences are raised to. Higher: the first cause outweighs the others more. Useful 1..3. */
 export const CAUSE_SHARPNESS = 3;

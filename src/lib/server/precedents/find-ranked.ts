@@ -22,9 +22,8 @@ const INCIDENTS_BUDGET = 40_000;
 export interface Found {
 	ranked: RankedPrecedent[];
 	rows: ReadonlyMap<number, store.CandidateRow>;
-	/** The terms asked for, rarest first, and what BM25 could reach with them. */
+	/** The terms asked for, rarest first. */
 	terms: string[];
-	best: number;
 	rarity: Rarity;
 }
 
@@ -53,7 +52,6 @@ export async function findRanked(
 		ranked,
 		rows: new Map(rows.map((row) => [row.number, row])),
 		terms: words.terms,
-		best: words.weight,
 		rarity
 	};
 }
