@@ -1,6 +1,10 @@
+import { readFile } from 'node:fs/promises';
+import { suggestTitle } from '$lib/domain/incident/prefill';
+import type { Problem } from '$lib/domain/problem';
 import { sizingInput } from '$lib/domain/sizing/sizing';
 import { receiveUploads } from '$lib/server/evidence/receive-uploads';
 import { removeFromSpool } from '$lib/server/evidence/spool';
+import type { Upload } from '$lib/server/evidence/upload';
 import { readQuery } from '$lib/server/http/api';
 import { requireActor } from '$lib/server/http/guard';
 import { failWith } from '$lib/server/http/respond';
@@ -13,6 +17,24 @@ export const load = ((event) => {
 	return { asked: asked.ok ? asked.value : null };
 }) satisfies PageServerLoad;
 
+const NOTHING_GIVEN: Problem = {
+	code: 'invalid',
+	detail: 'Choose a file, or paste a plan or lines of a log first.'
+};
+
+/** What receiveUploads calls a text that came without a file. */
+const PASTED_NAME = 'paste.txt';
+/** Longer texts aren't sent back to be carried over. */
+const CARRIED_BYTES = 500_000;
+
+/** The text that was pasted, for logging it from here; null: there was none alone, or too much of it. */
+async function readPasted(uploads: readonly Upload[]): Promise<string | null> {
+	const [only] = uploads;
+	if (only === undefined || uploads.length > 1 || only.name !== PASTED_NAME || only.bytes > CARRIED_BYTES)
+		return null;
+	return readFile(only.path, 'utf8');
+}
+
 export const actions = {
 	/** For a browser without JavaScript; the others read here themselves. Nothing is stored. */
 	default: async (event) => {
@@ -21,9 +43,12 @@ export const actions = {
 		if (!received.ok) return failWith(received.problem, {});
 		const { uploads } = received.value;
 		try {
-			const read = await readings.read(actor, uploads);
+			// An empty file field arrives as a file without bytes.
+			const given = uploads.filter(({ bytes }) => bytes > 0);
+			if (given.length === 0) return failWith(NOTHING_GIVEN, {});
+			const read = await readings.read(actor, given);
 			if (!read.ok) return failWith(read.problem, {});
-			return { readings: read.value };
+			return { readings: read.value, title: suggestTitle(read.value), pasted: await readPasted(given) };
 		} finally {
 			await removeFromSpool(uploads.map((upload) => upload.path));
 		}
