@@ -39,7 +39,9 @@ export const PERMISSIONS = {
 	'account.own': { from: 'reader' },
 	'people.manage': { from: 'administrator' },
 	'settings.manage': { from: 'administrator' },
-	'audit.read': { from: 'administrator' }
+	'audit.read': { from: 'administrator' },
+	/** The outbox: what was mailed to whom, with the links where no mail server is set. */
+	'mail.read': { from: 'administrator' }
 } as const satisfies Record<string, Rule>;
 
 export type Permission = keyof typeof PERMISSIONS;

@@ -1,38 +1,32 @@
+import type { Page } from '$lib/domain/page';
 import { can } from '$lib/domain/person/can';
-import { findPasswordFault } from '$lib/domain/person/password-rule';
-import type { Actor, Person, Role } from '$lib/domain/person/person';
+import type { PeopleQuery } from '$lib/domain/person/people-query';
+import type { Actor, Person } from '$lib/domain/person/person';
 import type { PasswordChangeInput, PersonInput, SignInInput } from '$lib/domain/person/person-input';
 import { fail, ok, type Outcome } from '$lib/domain/problem';
+import { cutPage, readCursor, type Place } from '../api/cursor';
 import * as audit from '../audit/audit-service';
 import { config, isLoopback } from '../config';
 import { write } from '../db/transaction';
+import { passwordChangedLetter } from '../mail/letters';
+import { queueMail } from '../mail/mail-service';
 import { hashSecret, makeSecret } from '../secrets';
 import { deleteSessionsOf } from '../sessions/session-store';
-import { revokeTokensOf } from '../sessions/token-store';
 import { DEMO_PASSWORD } from './demo-password';
 import { hashPassword, verifyPassword } from './password';
+import { findNewPasswordFault } from './password-fault';
+import { needsAdministrator, toActor, toDetail, type PersonDetail } from './person-detail';
 import * as store from './people-store';
 import { countSignIn, forgetSignIn } from './sign-in-limits';
+
+export { update } from './change-person';
+export type { PersonDetail };
 
 const DAY_MS = 24 * 60 * 60 * 1000;
 /** How long the link of a newcomer opens. */
 export const LINK_DAYS = 7;
+const LIST = 'people';
 
-/** A person as administrators see them. */
-export interface PersonDetail extends Person {
-	email: string;
-	role: Role;
-	createdAt: string;
-	deactivatedAt: string | null;
-	hasPassword: boolean;
-}
-
-function toDetail(record: store.PersonRecord): PersonDetail {
-	const { id, name, email, role, createdAt, deactivatedAt } = record;
-	return { id, name, email, role, createdAt, deactivatedAt, hasPassword: record.passwordHash !== null };
-}
-
-const NOT_ALLOWED = fail('forbidden', 'Only an administrator manages people.');
 const UNKNOWN_LINK = fail(
 	'not_found',
 	'This link was used already, has run out or was replaced. Ask an administrator for a new one.'
@@ -54,18 +48,13 @@ export async function signIn(input: SignInInput & { address: string }): Promise<
 		return fail('unauthenticated', 'This address and this password do not belong together.');
 	}
 	await forgetSignIn(input.email, input.address);
+	await write((t) => audit.record(toActor(person), 'person.sign-in', `person:${person.id}`, {}, t));
 	return ok({ id: person.id, name: person.name });
 }
 
 /** The demonstration's printed password opens only on the machine itself. */
 function isShutDemo(password: string): boolean {
 	return password === DEMO_PASSWORD && !isLoopback(config().host);
-}
-
-/** What is wrong with a new password; null where it will do. */
-function findFault(password: string, person: { name: string; email: string }): string | null {
-	if (password === DEMO_PASSWORD) return 'This is the password of the demonstration, known to all.';
-	return findPasswordFault(password, person);
 }
 
 async function putLink(actor: Actor, person: Person, action: string): Promise<string> {
@@ -86,7 +75,7 @@ export async function add(
 	actor: Actor,
 	input: PersonInput
 ): Promise<Outcome<{ person: PersonDetail; linkToken: string }>> {
-	if (!can(actor, 'people.manage')) return NOT_ALLOWED;
+	if (!can(actor, 'people.manage')) return needsAdministrator();
 	return write(async (t) => {
 		if (await store.findByEmail(input.email)) {
 			return fail('refused', 'There is a person with this address already.', {
@@ -96,11 +85,8 @@ export async function add(
 		const createdAt = new Date().toISOString();
 		const id = await store.insertPerson({ ...input, passwordHash: null, createdAt }, t);
 		const linkToken = await putLink(actor, { id, name: input.name }, 'person.add');
-		const { name, email, role } = input;
-		return ok({
-			person: { id, name, email, role, createdAt, deactivatedAt: null, hasPassword: false },
-			linkToken
-		});
+		const fresh = { passwordHash: null, deactivatedAt: null, lastSignInAt: null, revision: 1 };
+		return ok({ person: toDetail({ ...input, ...fresh, id, createdAt }), linkToken });
 	});
 }
 
@@ -109,7 +95,7 @@ export async function renewLink(
 	actor: Actor,
 	email: string
 ): Promise<Outcome<{ person: PersonDetail; linkToken: string }>> {
-	if (!can(actor, 'people.manage')) return NOT_ALLOWED;
+	if (!can(actor, 'people.manage')) return needsAdministrator();
 	const person = await store.findByEmail(email.trim().toLowerCase());
 	if (!person || person.deactivatedAt !== null)
 		return fail('not_found', `Nobody here has the address ${email}.`);
@@ -118,7 +104,7 @@ export async function renewLink(
 
 /** The person of an address, for whoever manages people. */
 export async function find(actor: Actor, email: string): Promise<Outcome<PersonDetail>> {
-	if (!can(actor, 'people.manage')) return NOT_ALLOWED;
+	if (!can(actor, 'people.manage')) return needsAdministrator();
 	const person = await store.findByEmail(email.trim().toLowerCase());
 	return person ? ok(toDetail(person)) : fail('not_found', `Nobody here has the address ${email}.`);
 }
@@ -130,12 +116,18 @@ export async function readLink(linkToken: string): Promise<Outcome<{ name: strin
 }
 
 /** Sets a password, in one transaction with the end of every session that the person had. */
-async function replacePassword(actor: Actor, id: number, password: string): Promise<void> {
+async function replacePassword(
+	actor: Actor,
+	{ id, name, email }: store.PersonRecord,
+	password: string
+): Promise<void> {
 	const passwordHash = await hashPassword(password);
 	await write(async (t) => {
 		await store.updatePerson(id, { passwordHash }, t);
+		await store.deleteLinksOf(id, t);
 		await deleteSessionsOf(id, t);
 		await audit.record(actor, 'person.password', `person:${id}`, {}, t);
+		await queueMail(email, passwordChangedLetter({ name, at: new Date().toISOString() }), t);
 	});
 }
 
@@ -145,21 +137,15 @@ export async function setPasswordByLink(linkToken: string, password: string): Pr
 	const now = new Date().toISOString();
 	const owner = await store.findLinkOwner(tokenHash, now);
 	if (!owner) return UNKNOWN_LINK;
-	const fault = findFault(password, owner);
+	const fault = findNewPasswordFault(password, owner);
 	if (fault) return fail('invalid', fault, { errors: [{ field: 'password', message: fault }] });
-	const actor: Actor = {
-		personId: owner.id,
-		name: owner.name,
-		role: owner.role,
-		via: 'session',
-		tokenId: null
-	};
 	const passwordHash = await hashPassword(password);
 	return write(async (t) => {
 		if (!(await store.useLink(tokenHash, now, t))) return UNKNOWN_LINK;
 		await store.updatePerson(owner.id, { passwordHash }, t);
 		await deleteSessionsOf(owner.id, t);
-		await audit.record(actor, 'person.password', `person:${owner.id}`, { by: 'link' }, t);
+		await store.deleteLinksOf(owner.id, t);
+		await audit.record(toActor(owner), 'person.password', `person:${owner.id}`, { by: 'link' }, t);
 		return ok({ id: owner.id, name: owner.name });
 	});
 }
@@ -181,9 +167,9 @@ export async function changePassword(
 		return fail('invalid', message, { errors: [{ field: 'current', message }] });
 	}
 	await forgetSignIn(person.email, input.address);
-	const fault = findFault(input.password, person);
+	const fault = findNewPasswordFault(input.password, person);
 	if (fault) return fail('invalid', fault, { errors: [{ field: 'password', message: fault }] });
-	await replacePassword(actor, person.id, input.password);
+	await replacePassword(actor, person, input.password);
 	return ok(null);
 }
 
@@ -194,37 +180,51 @@ export async function readSelf(actor: Actor): Promise<Outcome<PersonDetail>> {
 	return ok(toDetail(person));
 }
 
+/** A page of people by name, those who left last. */
+export async function listPage(actor: Actor, query: PeopleQuery): Promise<Outcome<Page<PersonDetail>>> {
+	if (!can(actor, 'people.manage')) return needsAdministrator();
+	const after = readCursor(LIST, query.cursor);
+	if (!after.ok) return after;
+	const filter = { active: query.active ?? null, role: query.role ?? null };
+	const [found, total] = await Promise.all([
+		store.listPeople(filter, toPlace(after.value), query.limit + 1),
+		store.countPeople(filter)
+	]);
+	const { rows, next } = cutPage(found, query.limit, LIST, ({ id, name, deactivatedAt }) => ({
+		key: `${deactivatedAt === null ? 'here' : 'left'} ${name}`,
+		id
+	}));
+	return ok({ items: rows.map(toDetail), next, total });
+}
+
+/** A cursor's key is the word `here` or `left`, a blank, and the name. */
+function toPlace(place: Place | null): store.PersonPlace | null {
+	if (place === null) return null;
+	const key = String(place.key);
+	return { hasLeft: key.startsWith('left '), name: key.slice('left '.length), id: place.id };
+}
+
+/** One person as administrators see them. */
+export async function read(actor: Actor, id: number): Promise<Outcome<PersonDetail>> {
+	if (!can(actor, 'people.manage')) return needsAdministrator();
+	const person = await store.findById(id);
+	return person ? ok(toDetail(person)) : fail('not_found', `There is no person ${id}.`);
+}
+
 /** Everybody, those who left last. */
 export async function list(actor: Actor): Promise<Outcome<PersonDetail[]>> {
-	if (!can(actor, 'people.manage')) return NOT_ALLOWED;
+	if (!can(actor, 'people.manage')) return needsAdministrator();
 	return ok((await store.listAll()).map(toDetail));
 }
 
 /** Who may be on an incident: everybody who may sign in and whose role lets them write. Names and ids only. */
 export async function listResponders(actor: Actor): Promise<Outcome<Person[]>> {
-	if (!can(actor, 'incident.write')) return NOT_ALLOWED;
+	if (!can(actor, 'incident.write')) return needsAdministrator();
 	const people = await store.listAll();
 	return ok(
 		people
 			.filter((person) => person.deactivatedAt === null)
-			.filter(({ id, name, role }) =>
-				can({ personId: id, name, role, via: 'session', tokenId: null }, 'incident.write')
-			)
+			.filter((person) => can(toActor(person), 'incident.write'))
 			.map(({ id, name }) => ({ id, name }))
 	);
-}
-
-/** Closes a person's account: sessions and tokens end in the same transaction. What they wrote stays. */
-export async function deactivate(actor: Actor, id: number): Promise<Outcome<null>> {
-	if (!can(actor, 'people.manage')) return NOT_ALLOWED;
-	return write(async (t) => {
-		const person = await store.findById(id);
-		if (!person) return fail('not_found', `There is no person ${id}.`);
-		const now = new Date().toISOString();
-		await store.updatePerson(id, { deactivatedAt: now }, t);
-		await deleteSessionsOf(id, t);
-		await revokeTokensOf(id, now, t);
-		await audit.record(actor, 'person.deactivate', `person:${id}`, {}, t);
-		return ok(null);
-	});
 }

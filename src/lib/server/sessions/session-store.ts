@@ -1,4 +1,5 @@
 import type { Role } from '$lib/domain/person/person';
+import { PersonModel } from '../db/models/person';
 import { SessionModel } from '../db/models/session';
 import { execute, select, selectOne } from '../db/query';
 import { write, type Transaction } from '../db/transaction';
@@ -31,8 +32,15 @@ export function listSessions(personId: number, now: string): Promise<SessionReco
 	);
 }
 
-export function insertSession(session: SessionRecord): Promise<unknown> {
-	return write((transaction) => SessionModel.create(session, { transaction }));
+/** Adds a session, and notes at the person when they signed in last. */
+export function insertSession(session: SessionRecord): Promise<void> {
+	return write(async (transaction) => {
+		await SessionModel.create(session, { transaction });
+		await PersonModel.update(
+			{ lastSignInAt: session.createdAt },
+			{ where: { id: session.personId }, transaction }
+		);
+	});
 }
 
 /** Moves the end of a session. */

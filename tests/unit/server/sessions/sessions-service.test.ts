@@ -58,7 +58,7 @@ describe('validate', () => {
 	it('ends at once when the person leaves', async () => {
 		const { id } = await makePerson();
 		const { value } = await sessions.create(id, null);
-		await people.deactivate(SYSTEM, id);
+		await people.update(SYSTEM, id, 1, { active: false });
 		expect((await sessions.validate(value)).actor).toBeNull();
 		expect(await SessionModel.count()).toBe(0);
 	});

@@ -79,7 +79,7 @@ describe('validate', () => {
 
 	it('stops at once when its owner leaves', async () => {
 		const { token, owner } = await makeToken('responder', 'responder');
-		await people.deactivate(SYSTEM, owner.id);
+		await people.update(SYSTEM, owner.id, 1, { active: false });
 		expect(await tokens.validate(token)).toBeNull();
 	});
 });

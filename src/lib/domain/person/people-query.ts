@@ -1,0 +1,11 @@
+import { z } from 'zod';
+import { pageQuery } from '../incident/incident-filter';
+import { ROLES } from './person';
+
+/** Query of the list of people. */
+export const peopleQuery = pageQuery.extend({
+	/** true: those who may sign in; false: those who left; left out: everybody. */
+	active: z.boolean('Give true or false.').optional(),
+	role: z.enum(ROLES, { error: `Give one of ${ROLES.join(', ')}.` }).optional()
+});
+export type PeopleQuery = z.infer<typeof peopleQuery>;
