@@ -8,6 +8,7 @@ import { createServer } from 'node:net';
 const SERVE = 'build/node/serve.js';
 const CATCHWATER = 'build/node/catchwater.js';
 const START_LIMIT_MS = 30_000;
+const DEMO_LIMIT_MS = 180_000;
 
 export interface Served {
 	origin: string;
@@ -29,18 +30,21 @@ export function freePort(): Promise<number> {
 	});
 }
 
-/** Starts the built server on a folder and waits for its health to be good. Throws with its output otherwise. */
-export async function serve(dataDir: string, env: Record<string, string> = {}): Promise<Served> {
+/**
+ * Starts the built server on a folder and waits for its health to be good; `demo` fills the folder first.
+ * Throws with the server's output where it does not start.
+ */
+export async function serve(dataDir: string, options: { demo?: boolean } = {}): Promise<Served> {
 	const port = await freePort();
 	const origin = `http://127.0.0.1:${port}`;
-	const child = spawn(process.execPath, [SERVE], {
-		env: { ...process.env, DATA_DIR: dataDir, HOST: '127.0.0.1', PORT: String(port), ORIGIN: origin, ...env },
+	const child = spawn(process.execPath, options.demo ? [SERVE, '--demo'] : [SERVE], {
+		env: { ...process.env, DATA_DIR: dataDir, HOST: '127.0.0.1', PORT: String(port), ORIGIN: origin },
 		stdio: ['ignore', 'pipe', 'pipe']
 	});
 	let output = '';
 	child.stdout.on('data', (chunk: Buffer) => (output += chunk.toString()));
 	child.stderr.on('data', (chunk: Buffer) => (output += chunk.toString()));
-	const until = Date.now() + START_LIMIT_MS;
+	const until = Date.now() + (options.demo ? DEMO_LIMIT_MS : START_LIMIT_MS);
 	while (Date.now() < until) {
 		if (child.exitCode !== null) break;
 		const answered = await fetch(`${origin}/api/v1/health`).then(
