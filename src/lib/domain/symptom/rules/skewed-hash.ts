@@ -1,8 +1,8 @@
 import type { PlanOperator } from '../../reading/operator';
 import { phraseOperator } from '../../reading/operator-phrase';
-import type { Plan, Symptom } from '../../reading/reading';
+import type { Symptom } from '../../reading/reading';
 import { chooseHashTable } from '../../sizing/hash';
-import { postgresLayout } from '../../sizing/layout';
+import { postgresLayout, type MemoryLayout } from '../../sizing/layout';
 import { formatKb } from '../../sizing/units';
 import { countOf, toFigures } from '../figures';
 import { guessMajorVersion } from '../guess-version';
@@ -28,8 +28,10 @@ export const LEAST_DOUBLING: Threshold = {
 export const skewedHash: SymptomRule = {
 	ids: ['skewed-hash'],
 	find({ plan, tree }: RuleInput): Symptom[] {
+		// Once a plan: telling the version looks at every operator.
+		const layout = postgresLayout(guessMajorVersion(plan));
 		return tree.operators.flatMap((hash) => {
-			const limitKb = limitOf(hash, plan);
+			const limitKb = limitOf(hash, layout);
 			const peakKb = hash.facts.hash?.peakKb ?? null;
 			// A shared table's chunks are counted for all processes together: its peak says nothing of skew.
 			if (limitKb === null || peakKb === null || hash.facts.parallelAware || !hasSpilled(hash)) return [];
@@ -57,9 +59,8 @@ export const skewedHash: SymptomRule = {
 };
 
 /** hash_mem; from 18 on the larger table that the engine chooses on purpose to save batches. */
-function limitOf(hash: PlanOperator, plan: Plan): number | null {
+function limitOf(hash: PlanOperator, layout: MemoryLayout): number | null {
 	if (hash.memoryLimitKb === null) return null;
-	const layout = postgresLayout(guessMajorVersion(plan));
 	if (!layout.balancesBatches) return hash.memoryLimitKb;
 	const { spaceBytes } = chooseHashTable(layout, {
 		rows: hash.facts.plannedRowsPerLoop ?? 0,
