@@ -63,7 +63,9 @@ function fromPlannedBatches(layout: MemoryLayout, evidence: HashEvidence): numbe
 function fromGrownBatches(layout: MemoryLayout, evidence: HashEvidence): number | null {
 	if (evidence.limitKb === null) return null;
 	const limitBytes = evidence.limitKb * BYTES_PER_KB;
-	for (let batches = Math.max(2, evidence.plannedBatches); batches <= evidence.batches; batches *= 2) {
+	// A later batch that comes out a little larger may double them once more; several doublings are skew.
+	const fewest = Math.max(2, evidence.plannedBatches, evidence.batches / 2);
+	for (let batches = fewest; batches <= evidence.batches; batches *= 2) {
 		const width = widthAt(layout, evidence, batches);
 		if (width <= 0) continue;
 		const fitted = tableBytes(layout, evidence, batches, width) <= limitBytes * (1 + LIMIT_TOLERANCE);
