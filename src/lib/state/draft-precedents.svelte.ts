@@ -1,22 +1,10 @@
 import type { Precedent } from '$lib/domain/precedent/precedent';
 import type { RunbookSummary } from '$lib/domain/runbook/runbook';
-import type { SymptomId } from '$lib/domain/symptom/symptom';
-
-/** What the form holds so far. */
-export interface DraftQuestion {
-	text: string;
-	service: string;
-	engine: string;
-	pieces: readonly { name: string; content: string | File; bytes: number }[];
-	symptoms: readonly SymptomId[];
-}
+import { toPrecedentForm, toRunbookQuery, type DraftQuestion } from './draft-question';
 
 /** Long enough that a sentence typed at speed asks once. */
 const DEBOUNCE_MS = 400;
-/** A plan fits; of a long log its beginning is enough to recognise the statement. */
-const MOST_BYTES = 512 * 1024;
 const PRECEDENTS = 4;
-const RUNBOOKS = 3;
 /** Fewer letters resemble everything. */
 const SHORTEST_TEXT = 4;
 
@@ -65,7 +53,7 @@ export class DraftPrecedents {
 		const [precedents, runbooks] = await Promise.all([
 			readItems<Precedent>(`${this.#urls.precedents}?limit=${PRECEDENTS}`, {
 				method: 'POST',
-				body: toForm(question),
+				body: toPrecedentForm(question),
 				signal: control.signal
 			}),
 			question.symptoms.length === 0
@@ -83,23 +71,6 @@ export class DraftPrecedents {
 		if (precedents !== null) this.items = precedents;
 		if (runbooks !== null) this.runbooks = runbooks;
 	}
-}
-
-function toForm(question: DraftQuestion): FormData {
-	const form = new FormData();
-	form.set('text', question.text);
-	if (question.service !== '') form.set('service', question.service);
-	if (question.engine !== '') form.set('engine', question.engine);
-	for (const { name, content } of question.pieces)
-		form.append('evidence', new Blob([content]).slice(0, MOST_BYTES), name);
-	return form;
-}
-
-function toRunbookQuery(question: DraftQuestion): string {
-	const query = new URLSearchParams({ state: 'published', limit: String(RUNBOOKS) });
-	for (const symptom of question.symptoms) query.append('symptom', symptom);
-	if (question.engine !== '' && question.engine !== 'unknown') query.set('engine', question.engine);
-	return query.toString();
 }
 
 /** The items of a list that this application's own server sent; null: no answer. */

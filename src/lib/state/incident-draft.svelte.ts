@@ -27,7 +27,8 @@ export class IncidentDraft {
 	from = $state<Partial<Record<DraftField, string>>>({});
 	/** Whether a draft was found on this device. */
 	restored = $state(false);
-	#typed = new Set<DraftField>();
+	/** The fields that a person typed into. */
+	#typed: DraftField[] = [];
 	#timer: ReturnType<typeof setTimeout> | undefined;
 
 	/** @param typed what a person typed before a refusal: it is theirs. */
@@ -36,13 +37,13 @@ export class IncidentDraft {
 			const value = typed[field];
 			if (value === undefined) continue;
 			this.values[field] = value;
-			if (value !== '') this.#typed.add(field);
+			if (value !== '') this.#own(field);
 		}
 	}
 
 	/** A person typed into the field: it is theirs from now on. */
 	typed(field: DraftField): void {
-		this.#typed.add(field);
+		this.#own(field);
 		delete this.from[field];
 		this.keep();
 	}
@@ -56,7 +57,7 @@ export class IncidentDraft {
 	/** Fills the fields that nobody typed into; takes back what evidence that is gone had filled. */
 	offer(prefill: Prefill): void {
 		for (const field of ['title', 'service', 'engine', 'engineVersion', 'database'] as const) {
-			if (this.#typed.has(field)) continue;
+			if (this.#typed.includes(field)) continue;
 			const suggestion = prefill[field];
 			if (suggestion !== null) {
 				this.values[field] = suggestion.value;
@@ -71,7 +72,7 @@ export class IncidentDraft {
 
 	/** Sets when it was noticed, as long as nobody typed it: the zone may become known after the first paint. */
 	offerNoticed(detectedAt: string): void {
-		if (!this.#typed.has('detectedAt')) this.values.detectedAt = detectedAt;
+		if (!this.#typed.includes('detectedAt')) this.values.detectedAt = detectedAt;
 	}
 
 	/** Takes up a draft that this device kept; says whether there was one. */
@@ -82,7 +83,7 @@ export class IncidentDraft {
 			const value = kept[field];
 			if (value === undefined || value === '' || value === this.values[field]) continue;
 			this.values[field] = value;
-			this.#typed.add(field);
+			this.#own(field);
 			this.restored = true;
 		}
 	}
@@ -91,7 +92,7 @@ export class IncidentDraft {
 	keep(): void {
 		clearTimeout(this.#timer);
 		this.#timer = setTimeout(() => {
-			const typed = [...this.#typed].filter((field) => this.values[field] !== '');
+			const typed = this.#typed.filter((field) => this.values[field] !== '');
 			if (typed.length === 0) localStorage.removeItem(KEY);
 			else
 				localStorage.setItem(
@@ -107,13 +108,17 @@ export class IncidentDraft {
 		localStorage.removeItem(KEY);
 	}
 
+	#own(field: DraftField): void {
+		if (!this.#typed.includes(field)) this.#typed.push(field);
+	}
+
 	/** Throws the draft away and begins anew. */
 	restart(): void {
 		this.forget();
 		this.values = { ...emptyDraft(), detectedAt: this.values.detectedAt };
 		this.from = {};
 		this.restored = false;
-		this.#typed.clear();
+		this.#typed = [];
 	}
 }
 

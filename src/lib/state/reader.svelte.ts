@@ -1,4 +1,5 @@
 import { getContext, setContext } from 'svelte';
+import { presentTime } from './present-time';
 
 /**
  * The reader's zone and the present minute. The server knows the zone from a cookie after the first visit; until
@@ -37,7 +38,7 @@ export function provideReader(fromServer: () => { zone: string | null; now: stri
 			document.cookie = `catchwater_zone=${encodeURIComponent(here)}; path=/; max-age=${YEAR_SECONDS}; samesite=lax`;
 			zone = here;
 		}
-		const tick = () => (now = new Date().toISOString());
+		const tick = () => (now = presentTime());
 		tick();
 		const timer = setInterval(tick, 60_000);
 		return () => clearInterval(timer);
@@ -46,5 +47,5 @@ export function provideReader(fromServer: () => { zone: string | null; now: stri
 
 /** The reader's zone and minute; UTC and the device's clock outside the application's layout. */
 export function useReader(): Reader {
-	return getContext<Reader | undefined>(KEY) ?? { zone: 'UTC', known: false, now: new Date().toISOString() };
+	return getContext<Reader | undefined>(KEY) ?? { zone: 'UTC', known: false, now: presentTime() };
 }

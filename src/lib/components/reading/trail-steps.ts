@@ -24,8 +24,9 @@ export interface DrawnStep {
 /** Two ratios that a reader would call the same. */
 const SAME = 1.05;
 
-/** The operators of a tree under their paths. */
-export function operatorsByPath(root: Operator): Map<string, Operator> {
+/** The operators of a tree under their paths; none without a tree. */
+export function operatorsByPath(root: Operator | null): Map<string, Operator> {
+	if (root === null) return new Map();
 	return new Map([...walkOperators(root)].map((operator) => [operator.path, operator]));
 }
 

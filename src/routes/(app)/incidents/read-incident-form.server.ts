@@ -33,7 +33,7 @@ function readTyped<S extends z.ZodObject>(typed: Record<string, string>, schema:
 		return name === 'labels' ? text.split(',').map((label) => label.trim()) : [text];
 	};
 	const read = validate(schema, toFields(schema.shape, textsOf));
-	if (issues.length === 0) return read;
+	if (issues.length === 0 && read.ok) return read;
 	return fail('invalid', 'Correct the fields that are marked.', {
 		errors: [...issues, ...(read.ok ? [] : (read.problem.errors ?? []))]
 	});
