@@ -1,10 +1,12 @@
 import { listRequiredChecks } from '$lib/domain/caution/required-checks';
 import type { Attempt, AttemptOutcome } from '$lib/domain/incident/attempt';
+import { can } from '$lib/domain/person/can';
 import type { Actor } from '$lib/domain/person/person';
 import { fail, ok, type Outcome } from '$lib/domain/problem';
 import * as attempts from '../incidents/attempts-service';
 import * as entries from '../incidents/entries-service';
 import * as incidents from '../incidents/incidents-service';
+import * as people from '../people/people-service';
 import * as runbooks from '../runbooks/runbooks-service';
 
 /** Which attempt, in which incident, by which runbook: all three have to fit together. */
@@ -45,9 +47,14 @@ function findNext(attempt: Attempt): number {
  * first that is not done. CONCLUDE wants none.
  */
 export async function read(actor: Actor, place: Place, wanted: number | null) {
-	const [found, incident] = await Promise.all([find(actor, place), incidents.read(actor, place.incident)]);
+	const [found, incident, responders] = await Promise.all([
+		find(actor, place),
+		incidents.read(actor, place.incident),
+		can(actor, 'incident.write') ? people.listResponders(actor) : ok([])
+	]);
 	if (!found.ok) return found;
 	if (!incident.ok) return incident;
+	if (!responders.ok) return responders;
 	const { attempt, page } = found.value;
 	const { number, title, revision, evidence } = incident.value;
 	const next = attempt.outcome === null ? findNext(attempt) : CONCLUDE;
@@ -61,6 +68,8 @@ export async function read(actor: Actor, place: Place, wanted: number | null) {
 		steps: page.steps.map((step) => ({ number: step.number, title: step.title })),
 		/** null: the outcome is asked for, or stands. */
 		current,
+		/** To whom it may be handed over. */
+		others: responders.value.filter(({ id }) => id !== actor.personId),
 		/** What has to be ticked before the statements of the step may be copied. */
 		checks: current === null ? [] : listRequiredChecks(current.statements)
 	});
@@ -129,17 +138,17 @@ export function conclude(
 }
 
 /**
- * Stops in the middle: the log says where and what comes next, and nobody is on the incident any more, so that
- * it stands first on the Watch. The attempt stays under way for whoever takes it.
+ * Stops in the middle: the log says where and what comes next, and `to` is on the incident from now on. Nobody
+ * (null) puts it first on the Watch. The attempt stays under way for whoever goes on.
  */
 export async function handOver(
 	actor: Actor,
 	place: Place,
-	input: { incidentRevision: number; note: string }
+	input: { incidentRevision: number; note: string; to: number | null }
 ): Promise<Outcome<null>> {
 	const found = await find(actor, place);
 	if (!found.ok) return found;
-	const freed = await incidents.update(actor, place.incident, input.incidentRevision, { owner: null });
+	const freed = await incidents.update(actor, place.incident, input.incidentRevision, { owner: input.to });
 	if (!freed.ok) return freed;
 	const { attempt } = found.value;
 	const done = attempt.steps.filter((step) => step.tickedAt !== null || step.skipped !== null).length;

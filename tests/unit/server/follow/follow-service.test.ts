@@ -172,7 +172,8 @@ describe('handOver', () => {
 		const before = valueOf(await incidents.read(actor, incident));
 		const outcome = await follow.handOver(actor, place, {
 			incidentRevision: before.revision + 7,
-			note: 'Bed.'
+			note: 'Bed.',
+			to: null
 		});
 		expect(outcome).toMatchObject({ ok: false, problem: { code: 'stale' } });
 		const after = valueOf(await incidents.read(actor, incident));
@@ -185,12 +186,27 @@ describe('handOver', () => {
 		valueOf(await follow.tick(actor, place, { step: 1, revision: 1, checks: [] }));
 		const { revision } = valueOf(await incidents.read(actor, incident));
 		valueOf(
-			await follow.handOver(actor, place, { incidentRevision: revision, note: 'Step 2 waits for disk.' })
+			await follow.handOver(actor, place, {
+				incidentRevision: revision,
+				note: 'Step 2 waits for disk.',
+				to: null
+			})
 		);
 		const after = valueOf(await incidents.read(actor, incident));
 		expect(after.owner).toBeNull();
 		expect(after.entries.map((entry) => entry.text).join('\n')).toContain('after step 1 of 3');
 		expect(after.entries.map((entry) => entry.text).join('\n')).toContain('Step 2 waits for disk.');
 		expect(after.attempts[0]?.endedAt).toBeNull();
+	});
+
+	it('puts a colleague on it who is named', async () => {
+		const { actor, incident, place } = await begin();
+		const { id: colleague } = await makePerson({ name: 'Tomas Rehl' });
+		expect(valueOf(await follow.read(actor, place, null)).others.map(({ id }) => id)).toEqual([colleague]);
+		const { revision } = valueOf(await incidents.read(actor, incident));
+		valueOf(
+			await follow.handOver(actor, place, { incidentRevision: revision, note: 'Yours.', to: colleague })
+		);
+		expect(valueOf(await incidents.read(actor, incident)).owner?.id).toBe(colleague);
 	});
 });

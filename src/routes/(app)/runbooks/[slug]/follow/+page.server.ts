@@ -60,5 +60,9 @@ export const actions = {
 	conclude: act(concludeForm, (actor, place, { note, after, ...input }) =>
 		follow.conclude(actor, place, { ...input, note: note ?? null, after: after ?? null })
 	),
-	handOver: act(handOverForm, follow.handOver, ({ incident }) => `/incidents/${incident}`)
+	handOver: act(
+		handOverForm,
+		(actor, place, { to, ...input }) => follow.handOver(actor, place, { ...input, to: to ?? null }),
+		({ incident }) => `/incidents/${incident}`
+	)
 } satisfies Actions;

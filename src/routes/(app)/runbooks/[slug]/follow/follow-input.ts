@@ -40,6 +40,8 @@ export const concludeForm = edit.extend({
 
 export const handOverForm = z.object({
 	incidentRevision: whole,
+	/** Left empty: whoever takes it. */
+	to: whole.nullable().optional(),
 	note: z
 		.string({ error: 'Say where you stopped and what comes next.' })
 		.trim()
