@@ -9,9 +9,8 @@
 import { mkdtemp, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
-import { NO_EVIDENCE } from '$lib/domain/precedent/profile';
 import { REASON_KINDS, type ReasonKind } from '$lib/domain/precedent/precedent';
-import { profileOf } from '$lib/domain/precedent/profile';
+import { NO_EVIDENCE, profileOf, profileWords } from '$lib/domain/precedent/profile';
 import { wilsonInterval } from '$lib/domain/runbook/record';
 import { overrideConfig } from '$lib/server/config';
 import { closeDatabase, openDatabase } from '$lib/server/db/connection';
@@ -90,10 +89,8 @@ function byServer(find: (asked: Asked) => ReturnType<typeof findRanked>): Ranker
 
 /** The same question, had nobody attached anything. */
 function withoutEvidence(asked: Asked): Asked {
-	return {
-		...asked,
-		profile: profileOf({ ...asked.profile, text: asked.text, cause: null, resolution: null }, NO_EVIDENCE)
-	};
+	const told = profileWords(asked.text, null);
+	return { ...asked, profile: profileOf({ ...asked.profile, cause: null }, NO_EVIDENCE, told) };
 }
 
 async function run(

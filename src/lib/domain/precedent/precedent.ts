@@ -66,14 +66,20 @@ export interface EvidenceProfile {
 	hasRun: boolean;
 }
 
+/** What the words of one incident tell of, evidence aside. */
+export interface ToldProfile {
+	toldSymptoms: SymptomId[];
+	/** Causes that the words name, or name the remedy of; `isRemedied`: in the resolution. */
+	toldCauses: { id: CauseId; isRemedied: boolean }[];
+}
+
 /** What two incidents are compared on beside their words. */
 export interface PrecedentProfile extends EvidenceProfile {
+	toldCauses: ToldProfile['toldCauses'];
 	service: string | null;
 	engine: Engine | null;
 	database: string | null;
 	startedAt: string | null;
-	/** Causes that the words name, or name the remedy of; `isRemedied`: in the resolution. */
-	toldCauses: { id: CauseId; isRemedied: boolean }[];
 	/** A cause that a person wrote down, where it is one of the catalogue's. */
 	confirmedCause: CauseId | null;
 }

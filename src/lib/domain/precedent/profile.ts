@@ -5,7 +5,13 @@ import { findToldCauses, findToldSymptoms } from './told';
 import type { CauseId, SymptomId } from '../symptom/symptom';
 import { CAUSE_IDS } from '../symptom/symptom';
 import { readCourse, readMagnitude } from './figures';
-import type { EvidenceOfIncident, EvidenceProfile, PrecedentProfile, ProfileSymptom } from './precedent';
+import type {
+	EvidenceOfIncident,
+	EvidenceProfile,
+	PrecedentProfile,
+	ProfileSymptom,
+	ToldProfile
+} from './precedent';
 import { findTraits, indexByPath } from './traits';
 
 /** Bounds, so that a log of many statements or a plan of thousands of tables doesn't fill the index. */
@@ -13,19 +19,19 @@ const MOST_FINGERPRINTS = 5;
 const MOST_RELATIONS = 20;
 const MOST_SHAPES = 4;
 const MOST_TRAITS = 40;
+/** Characters of a text that are looked through for symptoms and causes told in words. */
+const LONGEST_TOLD = 4000;
+/** A told symptom has no figures: it weighs as one of medium damage. */
+const TOLD_WEIGHT = 0.5;
 
-/** What an incident says of itself beside its readings. */
+/** Where and when an incident happened, and the cause that was written down. */
 export interface ProfileFields {
-	/** Title and narrative: symptoms told in words are looked for in it. */
-	text: string;
 	service: string | null;
 	engine: PrecedentProfile['engine'];
 	database: string | null;
 	startedAt: string | null;
 	/** As written: an id of the catalogue or free text. */
 	cause: string | null;
-	/** What ended it; null: not known, or not to be looked at. */
-	resolution: string | null;
 }
 
 /** The profile of an incident without readings. */
@@ -39,18 +45,42 @@ export const NO_EVIDENCE: EvidenceProfile = {
 	hasRun: false
 };
 
-/** The profile of an incident: what its evidence shows, and where it happened. */
-export function profileOf(fields: ProfileFields, evidence: EvidenceProfile): PrecedentProfile {
+/** The profile of an incident without words. */
+export const NOTHING_TOLD: ToldProfile = { toldSymptoms: [], toldCauses: [] };
+
+/** The profile of an incident: what its evidence shows, what its words tell of, and where it happened. */
+export function profileOf(
+	fields: ProfileFields,
+	evidence: EvidenceProfile,
+	told: ToldProfile
+): PrecedentProfile {
 	return {
 		...evidence,
 		// A plan that ran shows what there is; what the words tell beside it is what somebody feared.
-		symptoms: evidence.hasRun ? evidence.symptoms : addTold(evidence.symptoms, fields.text),
-		toldCauses: tellCauses(fields),
+		symptoms: evidence.hasRun ? evidence.symptoms : addTold(evidence.symptoms, told.toldSymptoms),
+		toldCauses: told.toldCauses,
 		service: fields.service,
 		engine: fields.engine,
 		database: fields.database,
 		startedAt: fields.startedAt,
 		confirmedCause: CAUSE_IDS.find((id) => id === fields.cause) ?? null
+	};
+}
+
+/**
+ * What title and narrative tell of; with the resolution (null: not known, or not to be looked at), which was
+ * written once it was over and is believed before them.
+ */
+export function profileWords(text: string, resolution: string | null): ToldProfile {
+	const remedied = findToldCauses((resolution ?? '').slice(0, LONGEST_TOLD));
+	const story = text.slice(0, LONGEST_TOLD);
+	const feared = findToldCauses(story).filter((id) => !remedied.includes(id));
+	return {
+		toldSymptoms: findToldSymptoms(story),
+		toldCauses: [
+			...remedied.map((id) => ({ id, isRemedied: true })),
+			...feared.map((id) => ({ id, isRemedied: false }))
+		]
 	};
 }
 
@@ -124,24 +154,19 @@ function shapesOf(root: Parameters<typeof indexByPath>[0], trails: readonly Trai
 	);
 }
 
-/** Causes named by the words; the resolution, written once it was over, is believed before the narrative. */
-function tellCauses({ text, resolution }: ProfileFields): PrecedentProfile['toldCauses'] {
-	const remedied = findToldCauses(resolution ?? '');
-	const feared = findToldCauses(text).filter((id) => !remedied.includes(id));
-	return [
-		...remedied.map((id) => ({ id, isRemedied: true })),
-		...feared.map((id) => ({ id, isRemedied: false }))
-	];
-}
-
 /** Adds what the narrative tells of and no evidence shows. */
-function addTold(shown: readonly ProfileSymptom[], text: string): ProfileSymptom[] {
+function addTold(shown: readonly ProfileSymptom[], told: readonly SymptomId[]): ProfileSymptom[] {
 	const known = new Set(shown.map((symptom) => symptom.id));
-	const told: ProfileSymptom[] = [];
-	for (const id of findToldSymptoms(text)) {
-		if (known.has(id)) continue;
-		known.add(id);
-		told.push({ id, weight: 0.5, magnitude: null, course: null, operator: null, relation: null, told: true });
-	}
-	return [...shown, ...told];
+	const added = told
+		.filter((id) => !known.has(id))
+		.map((id) => ({
+			id,
+			weight: TOLD_WEIGHT,
+			magnitude: null,
+			course: null,
+			operator: null,
+			relation: null,
+			told: true
+		}));
+	return [...shown, ...added];
 }

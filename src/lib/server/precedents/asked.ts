@@ -1,5 +1,5 @@
 import type { PrecedentProfile } from '$lib/domain/precedent/precedent';
-import { NO_EVIDENCE, profileEvidence, profileOf } from '$lib/domain/precedent/profile';
+import { NO_EVIDENCE, profileEvidence, profileOf, profileWords } from '$lib/domain/precedent/profile';
 import type { Engine, Reading } from '$lib/domain/reading/reading';
 import * as store from './candidate-store';
 
@@ -30,7 +30,7 @@ export async function askIncident(number: number): Promise<Asked | null> {
 	const incident = await store.readAskedIncident(number);
 	if (incident === null) return null;
 	const text = `${incident.title}\n${incident.narrative}`;
-	const profile = profileOf({ ...incident, text, resolution: null }, incident.evidence ?? NO_EVIDENCE);
+	const profile = profileOf(incident, incident.profile ?? NO_EVIDENCE, profileWords(text, null));
 	return { number, text, profile, at: incident.startedAt ?? incident.createdAt };
 }
 
@@ -40,14 +40,12 @@ export function askDraft(draft: Draft, now: Date): Asked {
 	const readings = draft.readings ?? [];
 	const engine = readings.find((reading) => reading.engine !== 'unknown')?.engine;
 	const fields = {
-		text,
 		service: draft.service ?? null,
 		engine: draft.engine ?? engine ?? null,
 		database: draft.database ?? null,
 		startedAt: draft.startedAt ?? null,
-		cause: null,
-		resolution: null
+		cause: null
 	};
-	const profile = profileOf(fields, profileEvidence(readings));
+	const profile = profileOf(fields, profileEvidence(readings), profileWords(text, null));
 	return { number: null, text, profile, at: draft.startedAt ?? now.toISOString() };
 }

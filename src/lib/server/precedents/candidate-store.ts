@@ -1,32 +1,33 @@
-import type { EvidenceProfile } from '$lib/domain/precedent/precedent';
+import type { ProfileFields } from '$lib/domain/precedent/profile';
 import type { IncidentState } from '$lib/domain/incident/incident';
-import type { Engine } from '$lib/domain/reading/reading';
 import { fromJson } from '$lib/server/db/json';
 import { select, selectOne } from '$lib/server/db/query';
+import type { IndexedProfile } from '$lib/server/search/index-store';
 
 /** The incident asked about: its own words and setting. null: there is no such incident. */
-export interface AskedIncident {
+export interface AskedIncident extends ProfileFields {
 	number: number;
 	title: string;
 	narrative: string;
-	service: string | null;
-	engine: Engine | null;
-	database: string | null;
-	startedAt: string | null;
 	createdAt: string;
-	cause: string | null;
-	evidence: EvidenceProfile | null;
+	profile: IndexedProfile | null;
 }
 
 export async function readAskedIncident(number: number): Promise<AskedIncident | null> {
-	const row = await selectOne<Omit<AskedIncident, 'evidence'> & { evidence: string | null }>(
+	const row = await selectOne<Omit<AskedIncident, 'profile'> & { evidence: string | null }>(
 		`SELECT i.number, i.title, i.narrative, i.service, i.engine, i.database, i.startedAt, i.createdAt, i.cause,
 			p.evidence
 		FROM incidents i LEFT JOIN precedentProfiles p ON p.incidentNumber = i.number WHERE i.number = :number`,
 		{ number }
 	);
-	if (row === null) return null;
-	return { ...row, evidence: row.evidence === null ? null : fromJson<EvidenceProfile>(row.evidence) };
+	return row === null ? null : withProfile(row);
+}
+
+function withProfile<T extends { evidence: string | null }>(
+	row: T
+): Omit<T, 'evidence'> & { profile: IndexedProfile | null } {
+	const { evidence, ...rest } = row;
+	return { ...rest, profile: evidence === null ? null : fromJson<IndexedProfile>(evidence) };
 }
 
 /** In how many incidents each of the terms occurs; those that none holds are missing. */
@@ -83,40 +84,30 @@ export async function matchFeatures(
 }
 
 /** An incident as a candidate: everything but its long texts. */
-export interface CandidateRow {
+export interface CandidateRow extends ProfileFields {
 	number: number;
 	title: string;
-	/** First characters of the narrative: symptoms told in words are looked for in it. */
-	opening: string;
-	service: string | null;
-	engine: Engine | null;
-	database: string | null;
 	state: IncidentState;
-	startedAt: string | null;
 	resolvedAt: string | null;
-	cause: string | null;
-	/** First characters, as many as may be shown and searched for causes. */
+	/** First characters. */
 	resolution: string | null;
-	evidence: EvidenceProfile | null;
+	profile: IndexedProfile | null;
 }
 
-/** Of narrative and resolution this much is looked at for symptoms and causes told in words. */
-const OPENING = 2000;
+/** Characters of a resolution that are shown. */
+const RESOLUTION_SHOWN = 300;
 
 /** The incidents with these numbers; merged ones are left out, for they stand under another number. */
 export async function readCandidates(numbers: readonly number[]): Promise<CandidateRow[]> {
 	if (numbers.length === 0) return [];
-	const rows = await select<Omit<CandidateRow, 'evidence'> & { evidence: string | null }>(
-		`SELECT i.number, i.title, substr(i.narrative, 1, :opening) AS opening, i.service, i.engine, i.database,
-			i.state, i.startedAt, i.resolvedAt, i.cause, substr(i.resolution, 1, :opening) AS resolution, p.evidence
+	const rows = await select<Omit<CandidateRow, 'profile'> & { evidence: string | null }>(
+		`SELECT i.number, i.title, i.service, i.engine, i.database, i.state, i.startedAt, i.resolvedAt, i.cause,
+			substr(i.resolution, 1, :shown) AS resolution, p.evidence
 		FROM incidents i LEFT JOIN precedentProfiles p ON p.incidentNumber = i.number
 		WHERE i.number IN (:numbers) AND i.mergedInto IS NULL`,
-		{ numbers: [...numbers], opening: OPENING }
+		{ numbers: [...numbers], shown: RESOLUTION_SHOWN }
 	);
-	return rows.map((row) => ({
-		...row,
-		evidence: row.evidence === null ? null : fromJson<EvidenceProfile>(row.evidence)
-	}));
+	return rows.map(withProfile);
 }
 
 /** Numbers of all incidents that are not merged into another: for small collections. */

@@ -4,9 +4,6 @@ import * as store from './candidate-store';
 import type { Found } from './find-ranked';
 import type { Asked } from './asked';
 
-/** Characters of the resolution that are shown. */
-const RESOLUTION_SHOWN = 300;
-
 /** What is shown of each precedent, in the order in which they were ranked. */
 export async function describePrecedents(asked: Asked, found: Found): Promise<Precedent[]> {
 	const texts = await store.readTexts(found.ranked.map(({ candidate }) => candidate.number));
@@ -21,7 +18,7 @@ export async function describePrecedents(asked: Asked, found: Found): Promise<Pr
 			state: row.state,
 			startedAt: row.startedAt,
 			resolvedAt: row.resolvedAt,
-			resolution: row.resolution?.slice(0, RESOLUTION_SHOWN) ?? null,
+			resolution: row.resolution,
 			cause: row.cause,
 			later: row.startedAt !== null && row.startedAt > asked.at,
 			reasons: explain(asked.profile, ranked, {

@@ -2,7 +2,7 @@ import { scoreTexts, SMALL_COLLECTION } from '$lib/domain/precedent/bm25';
 import { chooseTerms, listTerms } from '$lib/domain/precedent/choose-terms';
 import { ANY_EVIDENCE, featuresOf, rarityFrom } from '$lib/domain/precedent/features';
 import type { Candidate, EvidenceProfile, RankedPrecedent, Rarity } from '$lib/domain/precedent/precedent';
-import { NO_EVIDENCE, profileOf } from '$lib/domain/precedent/profile';
+import { NO_EVIDENCE, NOTHING_TOLD, profileOf } from '$lib/domain/precedent/profile';
 import { rankPrecedents, type RankOptions } from '$lib/domain/precedent/rank';
 import { termsOf } from '$lib/domain/precedent/tokens';
 import { findConcepts } from '$lib/domain/precedent/trade-words';
@@ -40,7 +40,7 @@ export async function findRanked(
 	const numbers = new Set([...words.bm25.keys(), ...byEvidence]);
 	if (asked.number !== null) numbers.delete(asked.number);
 	const rows = await store.readCandidates([...numbers]);
-	const rarity = await weighFeatures([asked.profile, ...rows.map((row) => row.evidence ?? NO_EVIDENCE)]);
+	const rarity = await weighFeatures([asked.profile, ...rows.map((row) => row.profile ?? NO_EVIDENCE)]);
 	const candidates = rows.map((row) => toCandidate(row, words.bm25.get(row.number) ?? null));
 	const ranked = rankPrecedents(
 		{ profile: asked.profile, bestBm25: words.weight },
@@ -111,7 +111,7 @@ async function weighFeatures(profiles: readonly EvidenceProfile[]): Promise<Rari
 }
 
 function toCandidate(row: store.CandidateRow, bm25: number | null): Candidate {
-	const profile = profileOf({ ...row, text: `${row.title}\n${row.opening}` }, row.evidence ?? NO_EVIDENCE);
+	const profile = profileOf(row, row.profile ?? NO_EVIDENCE, row.profile ?? NOTHING_TOLD);
 	const hasOutcome =
 		(row.state === 'resolved' || row.state === 'reviewed') && (row.resolution ?? '').trim() !== '';
 	return { number: row.number, profile, bm25, hasOutcome, verdict: null };

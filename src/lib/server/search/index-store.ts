@@ -1,6 +1,6 @@
 import { fromJson, toJson } from '$lib/server/db/json';
 import { execute, select, selectOne } from '$lib/server/db/query';
-import type { EvidenceProfile } from '$lib/domain/precedent/precedent';
+import type { EvidenceProfile, ToldProfile } from '$lib/domain/precedent/precedent';
 import type { Reading } from '$lib/domain/reading/reading';
 
 /** What the index reads of an incident. */
@@ -57,9 +57,12 @@ export async function listReadings(number: number): Promise<Reading[]> {
 	return rows.map((row) => fromJson<Reading>(row.body));
 }
 
-/** An evidence profile as it stands in the index, with the words that the evidence is found by. */
-export interface StoredEvidence {
-	evidence: EvidenceProfile;
+/** What an incident's readings show and its words tell of. */
+export type IndexedProfile = EvidenceProfile & ToldProfile;
+
+/** A profile as it stands in the index, with the words that the evidence is found by. */
+export interface StoredProfile {
+	profile: IndexedProfile;
 	words: string;
 	/** Ids of the readings that it was drawn from. */
 	readingIds: string;
@@ -68,27 +71,29 @@ export interface StoredEvidence {
 	analysis: number;
 }
 
-export async function readStoredEvidence(number: number): Promise<StoredEvidence | null> {
-	const row = await selectOne<Omit<StoredEvidence, 'evidence'> & { evidence: string }>(
+export async function readStoredProfile(number: number): Promise<StoredProfile | null> {
+	const row = await selectOne<Omit<StoredProfile, 'profile'> & { evidence: string }>(
 		'SELECT evidence, words, readingIds, entries, analysis FROM precedentProfiles WHERE incidentNumber = :number',
 		{ number }
 	);
-	return row === null ? null : { ...row, evidence: fromJson<EvidenceProfile>(row.evidence) };
+	if (row === null) return null;
+	const { evidence, ...rest } = row;
+	return { ...rest, profile: fromJson<IndexedProfile>(evidence) };
 }
 
-/** Replaces the profile and the postings that lead to it. */
-export async function writeEvidence(
-	number: number,
-	stored: Omit<StoredEvidence, 'entries'>,
-	features: readonly string[]
-): Promise<void> {
+export async function writeProfile(number: number, stored: StoredProfile): Promise<void> {
+	const { profile, ...rest } = stored;
 	await execute(
 		`INSERT INTO precedentProfiles(incidentNumber, evidence, words, readingIds, entries, analysis)
-		VALUES (:number, :evidence, :words, :readingIds, '', :analysis)
+		VALUES (:number, :evidence, :words, :readingIds, :entries, :analysis)
 		ON CONFLICT (incidentNumber) DO UPDATE SET evidence = excluded.evidence, words = excluded.words,
-			readingIds = excluded.readingIds, analysis = excluded.analysis`,
-		{ ...stored, number, evidence: toJson(stored.evidence) }
+			readingIds = excluded.readingIds, entries = excluded.entries, analysis = excluded.analysis`,
+		{ ...rest, number, evidence: toJson(profile) }
 	);
+}
+
+/** Replaces the postings that lead to an incident. */
+export async function writePostings(number: number, features: readonly string[]): Promise<void> {
 	await execute('DELETE FROM precedentPostings WHERE incidentNumber = :number', { number });
 	if (features.length === 0) return;
 	await execute(
@@ -114,14 +119,6 @@ export async function writeIncidentTerms(number: number, terms: IncidentTerms): 
 		VALUES (:number, :title, :narrative, :resolution, :entries, :evidence, :ideas)`,
 		{ ...terms, number }
 	);
-}
-
-/** Notes which entries' words are in the index. */
-export async function writeEntryState(number: number, entries: string): Promise<void> {
-	await execute('UPDATE precedentProfiles SET entries = :entries WHERE incidentNumber = :number', {
-		number,
-		entries
-	});
 }
 
 export async function writeEntryTerms(id: number, text: string): Promise<void> {

@@ -1,5 +1,6 @@
 import { featuresOf } from '$lib/domain/precedent/features';
-import { profileEvidence } from '$lib/domain/precedent/profile';
+import type { EvidenceProfile } from '$lib/domain/precedent/precedent';
+import { profileEvidence, profileWords } from '$lib/domain/precedent/profile';
 import { ANALYSIS, indexIdeas, indexText } from '$lib/domain/search/index-text';
 import { evidenceWords } from '$lib/domain/search/evidence-words';
 import { write, type Transaction } from '$lib/server/db/transaction';
@@ -18,7 +19,8 @@ export async function incidentChanged(number: number, transaction: Transaction):
 	const incident = await store.readIncidentWords(number);
 	if (incident === null) return;
 	const { names, readingIds } = await store.readEvidenceState(number);
-	const { evidence, words, entries: indexed } = await bringEvidenceUpToDate(number, readingIds);
+	const stored = await store.readStoredProfile(number);
+	const { evidence, words } = await drawEvidence(number, readingIds, stored);
 	const entries = await store.listEntryTexts(number);
 	const entryText = entries.map((entry) => entry.text).join('\n\n');
 	const told = [incident.title, incident.narrative, incident.resolution ?? '', entryText].join('\n\n');
@@ -30,7 +32,18 @@ export async function incidentChanged(number: number, transaction: Transaction):
 		evidence: indexText([words, ...names].join('\n')),
 		ideas: indexIdeas(told)
 	});
-	await indexEntries(number, entries, indexed);
+	const isCurrent = stored?.analysis === ANALYSIS;
+	await store.writeProfile(number, {
+		profile: {
+			...evidence,
+			...profileWords(`${incident.title}\n${incident.narrative}`, incident.resolution)
+		},
+		words,
+		readingIds,
+		entries: await indexEntries(entries, isCurrent ? stored.entries : ''),
+		analysis: ANALYSIS
+	});
+	if (!isCurrent || stored.readingIds !== readingIds) await store.writePostings(number, featuresOf(evidence));
 	const index = asYouType();
 	transaction.afterCommit(() =>
 		index.put({
@@ -45,38 +58,30 @@ export async function incidentChanged(number: number, transaction: Transaction):
 	);
 }
 
-/** Draws the profile from the readings, unless they are those it was last drawn from. */
-async function bringEvidenceUpToDate(
+/** What the readings show, drawn anew unless they are those that it was last drawn from. */
+async function drawEvidence(
 	number: number,
-	readingIds: string
-): Promise<Pick<store.StoredEvidence, 'evidence' | 'words' | 'entries'>> {
-	const stored = await store.readStoredEvidence(number);
-	if (stored !== null && stored.readingIds === readingIds && stored.analysis === ANALYSIS) return stored;
+	readingIds: string,
+	stored: store.StoredProfile | null
+): Promise<{ evidence: EvidenceProfile; words: string }> {
+	if (stored !== null && stored.readingIds === readingIds && stored.analysis === ANALYSIS) {
+		return { evidence: stored.profile, words: stored.words };
+	}
 	const readings = readingIds === '' ? [] : await store.listReadings(number);
-	const evidence = profileEvidence(readings);
-	const words = evidenceWords(readings);
-	await store.writeEvidence(
-		number,
-		{ evidence, words, readingIds, analysis: ANALYSIS },
-		featuresOf(evidence)
-	);
-	return { evidence, words, entries: '' };
+	return { evidence: profileEvidence(readings), words: evidenceWords(readings) };
 }
 
-/** Writes the words of the entries that are new or were edited since. */
+/** Writes the words of the entries that are new or were edited since; answers which are in the index now. */
 async function indexEntries(
-	number: number,
 	entries: readonly { id: number; revision: number; text: string }[],
 	indexed: string
-): Promise<void> {
+): Promise<string> {
 	const known = new Set(indexed.split(' '));
-	const states = entries.map((entry) => `${entry.id}:${entry.revision}`);
-	if (states.every((state) => known.has(state))) return;
 	for (const entry of entries) {
 		if (!known.has(`${entry.id}:${entry.revision}`))
 			await store.writeEntryTerms(entry.id, indexText(entry.text));
 	}
-	await store.writeEntryState(number, states.join(' '));
+	return entries.map((entry) => `${entry.id}:${entry.revision}`).join(' ');
 }
 
 /** Brings the words of one runbook up to date in the caller's transaction. */
