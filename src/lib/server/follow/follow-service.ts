@@ -3,6 +3,7 @@ import type { Attempt, AttemptOutcome } from '$lib/domain/incident/attempt';
 import { can } from '$lib/domain/person/can';
 import type { Actor } from '$lib/domain/person/person';
 import { fail, ok, type Outcome } from '$lib/domain/problem';
+import { suggestBlanks } from './suggest-blanks';
 import * as attempts from '../incidents/attempts-service';
 import * as entries from '../incidents/entries-service';
 import * as incidents from '../incidents/incidents-service';
@@ -37,9 +38,7 @@ export const CONCLUDE = 0;
 
 /** The first step that is neither ticked nor skipped; CONCLUDE: there is none. */
 function findNext(attempt: Attempt): number {
-	return (
-		attempt.steps.find((step) => step.tickedAt === null && step.skipped === null)?.number ?? CONCLUDE
-	);
+	return attempt.steps.find((step) => step.tickedAt === null && step.skipped === null)?.number ?? CONCLUDE;
 }
 
 /**
@@ -68,6 +67,8 @@ export async function read(actor: Actor, place: Place, wanted: number | null) {
 		steps: page.steps.map((step) => ({ number: step.number, title: step.title })),
 		/** null: the outcome is asked for, or stands. */
 		current,
+		/** What the evidence says for blanks of the statements, by name. */
+		suggested: suggestBlanks(evidence),
 		/** To whom it may be handed over. */
 		others: responders.value.filter(({ id }) => id !== actor.personId),
 		/** What has to be ticked before the statements of the step may be copied. */
