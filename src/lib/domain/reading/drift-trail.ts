@@ -1,5 +1,5 @@
 import { countOf } from '../symptom/figures';
-import { listMisestimates, type MisestimateAt } from '../symptom/misestimates';
+import type { MisestimateAt } from '../symptom/misestimates';
 import { findOverflow, type Overflow } from '../symptom/overflow';
 import type { PlanTree } from '../symptom/plan-tree';
 import { formatRows } from '../sizing/units';
@@ -13,6 +13,8 @@ const LEAST_CARRIED_RATIO = Math.sqrt(10);
 const LEAST_WRONG_RATIO = 10;
 /** More than a handful tell nothing new. */
 const MOST_TRAILS = 8;
+/** Of the many errors in a plan of thousands of operators the largest are followed. */
+const MOST_FOLLOWED = 64;
 
 const JOINS: readonly PlanOperator['kind'][] = ['hash-join', 'merge-join', 'nested-loop'];
 
@@ -30,9 +32,11 @@ interface Course {
  * for it, or else to the highest operator that is still wrong. Those that overflow come first; of several that end at one
  * join, the one that fills its hash table.
  */
-export function findTrails(tree: PlanTree): Trail[] {
-	return listMisestimates(tree)
+export function findTrails(tree: PlanTree, misestimates: readonly MisestimateAt[]): Trail[] {
+	return misestimates
 		.filter((each) => !each.grows)
+		.sort((one, other) => other.q - one.q)
+		.slice(0, MOST_FOLLOWED)
 		.map((origin) => followUp(origin, tree))
 		.sort(compareCourses)
 		.slice(0, MOST_TRAILS)

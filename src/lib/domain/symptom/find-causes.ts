@@ -12,7 +12,7 @@ import { staleStatistics } from './causes/stale-statistics';
 import { coldCache, staleVisibilityMap, tableBloat } from './causes/storage';
 import { undersizedMemory } from './causes/undersized-memory';
 import { wrongBuildSide } from './causes/wrong-build-side';
-import { listMisestimates } from './misestimates';
+import type { MisestimateAt } from './misestimates';
 import { findOverflow } from './overflow';
 import type { PlanTree } from './plan-tree';
 import type { SymptomId } from './symptom';
@@ -38,9 +38,17 @@ const CAUSE_RULES: readonly CauseRule[] = [
 	coldCache
 ];
 
+/** What causes are judged by. */
+interface CauseEvidence {
+	plan: Plan;
+	tree: PlanTree;
+	misestimates: readonly MisestimateAt[];
+	symptoms: readonly Symptom[];
+}
+
 /** What may be behind a plan's symptoms, likeliest first. Runbooks are filled in by the server. */
-export function findCauses(plan: Plan, tree: PlanTree, symptoms: readonly Symptom[]): Cause[] {
-	const input = toInput(plan, tree, symptoms);
+export function findCauses(evidence: CauseEvidence): Cause[] {
+	const input = toInput(evidence);
 	return CAUSE_RULES.flatMap((rule) => rule(input) ?? [])
 		.sort((one, other) => other.confidence - one.confidence)
 		.map(({ confirm, ...finding }) => ({
@@ -50,8 +58,8 @@ export function findCauses(plan: Plan, tree: PlanTree, symptoms: readonly Sympto
 		}));
 }
 
-function toInput(plan: Plan, tree: PlanTree, symptoms: readonly Symptom[]): CauseInput {
-	const origins = plan.hasRuntime ? listMisestimates(tree).filter((each) => !each.grows) : [];
+function toInput({ plan, tree, misestimates, symptoms }: CauseEvidence): CauseInput {
+	const origins = plan.hasRuntime ? misestimates.filter((each) => !each.grows) : [];
 	const byPath = new Map(tree.operators.map((operator) => [operator.path, operator]));
 	const underestimated = origins
 		.filter(({ direction }) => direction === 'under')
@@ -77,7 +85,12 @@ function toInput(plan: Plan, tree: PlanTree, symptoms: readonly Symptom[]): Caus
 function listOverflows(tree: PlanTree, underestimated: readonly PlanOperator[]): OverflowAt[] {
 	const above = new Set<PlanOperator>();
 	for (const origin of underestimated) {
-		for (let next: PlanOperator | null = origin; next !== null; next = tree.parentOf(next)) above.add(next);
+		for (
+			let next: PlanOperator | null = origin;
+			next !== null && !above.has(next);
+			next = tree.parentOf(next)
+		)
+			above.add(next);
 	}
 	return tree.operators.flatMap((operator) => {
 		const overflow = findOverflow(operator, tree);

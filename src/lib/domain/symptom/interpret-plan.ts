@@ -3,6 +3,7 @@ import { findTrails } from '../reading/drift-trail';
 import { findCauses } from './find-causes';
 import { sizeOperators } from './size-operators';
 import { findSymptoms } from './find-symptoms';
+import { listMisestimates } from './misestimates';
 import { toPlanTree } from './plan-tree';
 
 /** What one plan shows: its symptoms, heaviest first; the trails of its misestimates; likely causes; what its spills would have needed. */
@@ -16,11 +17,12 @@ export interface Interpretation {
 /** Interprets one plan. Pure: the same plan gives the same answer. */
 export function interpretPlan(plan: Plan, spills: Spills | null): Interpretation {
 	const tree = toPlanTree(plan.root);
-	const symptoms = findSymptoms({ plan, tree, spills });
+	const misestimates = listMisestimates(tree);
+	const symptoms = findSymptoms({ plan, tree, misestimates, spills });
 	return {
 		symptoms,
-		trails: findTrails(tree),
-		causes: findCauses(plan, tree, symptoms),
+		trails: findTrails(tree, misestimates),
+		causes: findCauses({ plan, tree, misestimates, symptoms }),
 		sizing: sizeOperators(plan, tree)
 	};
 }

@@ -70,12 +70,15 @@ export interface MisestimateAt extends Misestimate {
 
 /** Where a plan's misestimates begin or grow by another factor of ten, in the order of the plan. */
 export function listMisestimates(tree: PlanTree): MisestimateAt[] {
-	return tree.operators.flatMap((operator) => {
+	const errors = new Map<PlanOperator, Misestimate>();
+	for (const operator of tree.operators) {
 		const found = findMisestimate(operator, tree);
-		if (found === null) return [];
+		if (found !== null) errors.set(operator, found);
+	}
+	return [...errors].flatMap(([operator, found]) => {
 		let inherited = 0;
 		for (const child of inheritsFrom(operator, tree)) {
-			const below = findMisestimate(child, tree);
+			const below = errors.get(child);
 			if (below?.direction === found.direction) inherited = Math.max(inherited, below.q);
 		}
 		if (inherited > 0 && found.q < inherited * LEAST_GROWTH.value) return [];

@@ -1,4 +1,5 @@
 import type { Plan, Spills, Symptom } from '../reading/reading';
+import type { MisestimateAt } from './misestimates';
 import type { PlanTree } from './plan-tree';
 
 export const SYMPTOM_IDS = [
@@ -61,6 +62,8 @@ export interface RuleInput {
 	plan: Plan;
 	/** The plan's operators with their place in it. */
 	tree: PlanTree;
+	/** Where estimates go wrong, worked out once for all rules. */
+	misestimates: readonly MisestimateAt[];
 	spills: Spills | null;
 }
 

@@ -3,16 +3,15 @@ import type { Symptom } from '../../reading/reading';
 import { formatRows, formatTimes } from '../../sizing/units';
 import { countPredicates } from '../expressions';
 import { countOf, toFigures } from '../figures';
-import { listMisestimates, type MisestimateAt } from '../misestimates';
+import type { MisestimateAt } from '../misestimates';
 import type { RuleInput, SymptomRule } from '../symptom';
 import { weighFactor } from '../weight';
 
 /** Row estimates that are off by a factor of ten, at the operators where the error begins or grows. */
 export const estimates: SymptomRule = {
 	ids: ['row-underestimate', 'row-overestimate'],
-	find({ plan, tree }: RuleInput): Symptom[] {
-		if (!plan.hasRuntime) return [];
-		return listMisestimates(tree).map(toSymptom);
+	find({ plan, misestimates }: RuleInput): Symptom[] {
+		return plan.hasRuntime ? misestimates.map(toSymptom) : [];
 	}
 };
 
