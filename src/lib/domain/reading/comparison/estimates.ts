@@ -1,27 +1,37 @@
 import { formatRows, formatTimes } from '../../sizing/units';
 import type { Operator } from '../operator';
+import type { Reading } from '../reading';
 import { differsByFactor, LEAST_WRONG_Q, MOST_RIGHT_Q } from './differences';
+import type { ComparedPair } from './compared';
 
 /** What became of an estimate: right or nearer now, wrong now, still wrong; null: nothing worth a word, or not known. */
 export type EstimateCourse = 'right' | 'nearer' | 'wrong-now' | 'still-wrong' | null;
 
-/** Fewer rows are read in no time, however wrong the number was; the threshold of the symptom rules. */
-const LEAST_ROWS = 1000;
-
-function isWrong({ qError, estimatedRows, actualRows }: Operator): boolean {
-	return (
-		qError !== null &&
-		qError >= LEAST_WRONG_Q &&
-		Math.max(estimatedRows ?? 0, actualRows ?? 0) >= LEAST_ROWS
+/**
+ * The paths at which a reading finds an estimate wrong: its symptoms and what its trails pass. Not every
+ * figure that is off is one: below a limit nobody asked for the rest of the rows.
+ */
+export function listMisestimated({ symptoms, trails }: Reading): Set<string> {
+	const paths = symptoms.flatMap(({ id, operator }) =>
+		operator !== null && (id === 'row-underestimate' || id === 'row-overestimate') ? [operator] : []
 	);
+	const steps = trails.flatMap((trail) =>
+		trail.steps.flatMap(({ operator, ratio }) =>
+			Math.max(ratio, 1 / ratio) >= LEAST_WRONG_Q ? [operator] : []
+		)
+	);
+	return new Set([...paths, ...steps]);
 }
 
 /** How the estimate of an operator went from one plan to the other. */
-export function followEstimate(before: Operator, after: Operator): EstimateCourse {
-	if (before.qError === null || after.qError === null) return null;
-	if (isWrong(after)) return isWrong(before) ? 'still-wrong' : 'wrong-now';
-	if (!isWrong(before)) return null;
-	return after.qError < MOST_RIGHT_Q ? 'right' : 'nearer';
+export function followEstimate({ before, after, wrongBefore, wrongAfter }: ComparedPair): EstimateCourse {
+	// A hash table repeats the estimate of its input.
+	if (before === null || after === null || after.operator.kind === 'hash-build') return null;
+	if (wrongAfter) return wrongBefore ? 'still-wrong' : 'wrong-now';
+	const { qError } = after.operator;
+	if (!wrongBefore || qError === null) return null;
+	if (qError < MOST_RIGHT_Q) return 'right';
+	return qError < (before.operator.qError ?? 0) / MOST_RIGHT_Q ? 'nearer' : null;
 }
 
 /** "450,250 for 450,300": expected for actual. */
@@ -30,17 +40,20 @@ export function sayEstimate({ estimatedRows, actualRows }: Operator): string {
 }
 
 /** What the estimate of an operator came to, for the table of changes; null: nothing worth a line. */
-export function describeEstimate(before: Operator, after: Operator): string | null {
-	switch (followEstimate(before, after)) {
+export function describeEstimate(pair: ComparedPair): string | null {
+	const [was, is] = [pair.before?.operator, pair.after?.operator];
+	if (was === undefined || is === undefined) return null;
+	const figures = `${sayEstimate(is)}, was ${sayEstimate(was)}`;
+	switch (followEstimate(pair)) {
 		case 'right':
-			return `the estimate is right now: ${sayEstimate(after)}, was ${sayEstimate(before)}`;
+			return `the estimate is right now: ${figures}`;
 		case 'nearer':
-			return `the estimate is nearer: ${sayEstimate(after)}, was ${sayEstimate(before)}`;
+			return `the estimate is nearer: ${figures}`;
 		case 'wrong-now':
-			return `the estimate is wrong now: ${sayEstimate(after)}, was ${sayEstimate(before)}`;
+			return `the estimate is wrong now: ${figures}`;
 		case 'still-wrong':
-			return differsByFactor(before.qError, after.qError, LEAST_WRONG_Q)
-				? `the estimate is off ${formatTimes(after.qError ?? 1)} instead of ${formatTimes(before.qError ?? 1)}`
+			return differsByFactor(was.qError, is.qError, LEAST_WRONG_Q)
+				? `the estimate is off ${formatTimes(is.qError ?? 1)} instead of ${formatTimes(was.qError ?? 1)}`
 				: null;
 		default:
 			return null;

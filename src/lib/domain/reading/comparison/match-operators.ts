@@ -17,9 +17,17 @@ const ROUNDS: readonly KeyOf[] = [
 	// Joined in another order, over other tables: the condition still says which join it is.
 	({ job, identity }) => (identity === '' ? null : `${job} ${identity}`),
 	({ job, operator }) => (operator.relation === null ? null : `${job} ${operator.relation.toLowerCase()}`),
+	// A rewritten statement calls the same columns of another name's.
+	({ job, identity, operator }) =>
+		identity === '' || operator.relation !== null ? null : `${job} ${withoutQualifiers(identity)}`,
 	// Another condition or none, over the same tables: a nested loop names no condition of its own.
 	({ job, reads, operator }) => (operator.relation === null ? `${job} ${reads}` : null)
 ];
+
+/** "d.region, e.kind" → "region, kind" */
+function withoutQualifiers(identity: string): string {
+	return identity.replaceAll(/[\w$"]+\./g, '');
+}
 
 function append(groups: Map<string, PlacedOperator[]>, key: string, placed: PlacedOperator): void {
 	const group = groups.get(key);
@@ -102,14 +110,15 @@ class Matching {
 		return children;
 	}
 
-	/** The only one left of its job on either side: a sort by other keys is still the sort. */
+	/** The only one left of its job on either side, where one of them does not say what it does. */
 	matchLast(): void {
 		const keyOf: KeyOf = ({ job, operator }) => (operator.relation === null ? job : null);
 		const after = this.group(this.after, keyOf);
 		for (const [job, [only, more]] of this.group(this.before, keyOf)) {
 			const [other, others] = after.get(job) ?? [];
-			if (only !== undefined && more === undefined && other !== undefined && others === undefined)
-				this.pair(only, other);
+			if (only === undefined || other === undefined || more !== undefined || others !== undefined) continue;
+			// Two that say of themselves what they do, and say different things over different tables, are two.
+			if (only.identity === '' || other.identity === '') this.pair(only, other);
 		}
 	}
 }

@@ -3,33 +3,33 @@ import { countOf } from '../../symptom/figures';
 import type { Operator } from '../operator';
 import { differs, differsByFactor, LEAST_MS, sayMsMove } from './differences';
 import { describeEstimate } from './estimates';
-import type { OperatorPair } from './match-operators';
+import type { ComparedPair } from './compared';
 import { orderCondition, type PlacedOperator } from './operator-meaning';
 import { buildSideOf, sayKind, sayTables } from './operator-words';
 import type { Spilled } from './spilled';
 
-/** A pair with what each side left in temporary files; null: it stayed in memory, or is not there. */
-export interface ComparedPair extends OperatorPair {
-	spilledBefore: Spilled | null;
-	spilledAfter: Spilled | null;
-}
-
 /** Fewer rows make no difference that anybody waits for. */
 const LEAST_ROWS = 1000;
 const LEAST_LOOPS = 100;
+const LEAST_MEMORY_KB = 1024;
+/** An operator's own time wavers more than the whole; what is less than this share of the whole is not where the time went. */
+const LEAST_SHARE_OF_TIME = 0.05;
 /** Longer conditions are cut: the plan itself is at hand. */
 const LONGEST_CONDITION = 60;
 
-/** What changed at a pair of operators, most telling first; empty: nothing beyond the noise of two runs. */
-export function describeChanges(pair: ComparedPair): string[] {
+/**
+ * What changed at a pair of operators, most telling first; empty: nothing beyond the noise of two runs.
+ * `totalMs`: how long the slower plan took as a whole.
+ */
+export function describeChanges(pair: ComparedPair, totalMs: number): string[] {
 	const { before, after } = pair;
 	if (before === null) return after === null ? [] : ['new', ...overflowOf(pair.spilledAfter)];
 	if (after === null) return ['gone', ...overflowOf(pair.spilledBefore)];
 	const [was, is] = [before.operator, after.operator];
 	const texts = [describeMethod(was, is), ...describeSides(before, after), describeSpill(pair)];
 	// A hash table repeats the rows of its input; what is its own is its memory.
-	if (is.kind !== 'hash-build') texts.push(describeEstimate(was, is), ...describeWork(was, is));
-	texts.push(describeMemory(was, is));
+	if (is.kind !== 'hash-build') texts.push(describeEstimate(pair), ...describeWork(was, is, totalMs));
+	texts.push(describeMemory(pair, was, is));
 	return texts.filter((text) => text !== null);
 }
 
@@ -90,7 +90,8 @@ function ofFigures({ batches, bytes }: Spilled, before = ''): string {
 	return parts.length === 0 ? '' : `: ${before}${parts.join(', ')}`;
 }
 
-function describeWork(was: Operator, is: Operator): (string | null)[] {
+function describeWork(was: Operator, is: Operator, totalMs: number): (string | null)[] {
+	const leastMs = Math.max(LEAST_MS, LEAST_SHARE_OF_TIME * totalMs);
 	return [
 		differsByFactor(was.loops, is.loops, LEAST_LOOPS)
 			? `runs ${countOf(is.loops ?? 0, 'time')} instead of ${formatRows(was.loops ?? 0)}`
@@ -101,16 +102,23 @@ function describeWork(was: Operator, is: Operator): (string | null)[] {
 		differsByFactor(was.discardedRows, is.discardedRows, LEAST_ROWS)
 			? `throws away ${countOf(is.discardedRows ?? 0, 'row')} instead of ${formatRows(was.discardedRows ?? 0)}`
 			: null,
-		was.selfMs !== null && is.selfMs !== null && differs(was.selfMs, is.selfMs, LEAST_MS)
+		was.selfMs !== null && is.selfMs !== null && differs(was.selfMs, is.selfMs, leastMs)
 			? `own time ${sayMsMove(was.selfMs, is.selfMs)}`
 			: null
 	];
 }
 
-function describeMemory(was: Operator, is: Operator): string | null {
-	if (was.memoryLimitKb !== null && is.memoryLimitKb !== null && was.memoryLimitKb !== is.memoryLimitKb)
+/** Where an operator was short of memory, or shows what it used; a limit that nobody came near tells nothing. */
+function describeMemory(pair: ComparedPair, was: Operator, is: Operator): string | null {
+	const isNear = pair.spilledBefore !== null || pair.spilledAfter !== null || is.kind === 'hash-build';
+	if (
+		isNear &&
+		was.memoryLimitKb !== null &&
+		is.memoryLimitKb !== null &&
+		was.memoryLimitKb !== is.memoryLimitKb
+	)
 		return `may use ${formatKb(is.memoryLimitKb)} instead of ${formatKb(was.memoryLimitKb)}`;
-	return differsByFactor(was.memoryKb, is.memoryKb, 1024)
+	return differsByFactor(was.memoryKb, is.memoryKb, LEAST_MEMORY_KB)
 		? `uses ${formatKb(is.memoryKb ?? 0)} instead of ${formatKb(was.memoryKb ?? 0)}`
 		: null;
 }
@@ -118,4 +126,3 @@ function describeMemory(was: Operator, is: Operator): string | null {
 function shorten(text: string): string {
 	return text.length <= LONGEST_CONDITION ? text : `${text.slice(0, LONGEST_CONDITION - 1).trimEnd()}…`;
 }
-

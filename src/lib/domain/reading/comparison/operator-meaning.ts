@@ -46,7 +46,14 @@ export function placeOperators(root: Operator): PlacedOperator[] {
 		for (const child of operator.children) parents.set(child, operator);
 		const above = parents.get(operator);
 		const parent = above === undefined ? null : (byOperator.get(above) ?? null);
-		const one = { operator, parent, job: jobOf(operator), identity: identify(operator), reads: '', tables: 0 };
+		const one = {
+			operator,
+			parent,
+			job: jobOf(operator),
+			identity: identify(operator),
+			reads: '',
+			tables: 0
+		};
 		placed.push(one);
 		byOperator.set(operator, one);
 	}

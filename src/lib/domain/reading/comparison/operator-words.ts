@@ -30,11 +30,10 @@ const MOST_TABLES = 2;
 
 /** The tables that an operator reads, itself and below: "invoice", "invoice and port_call", "invoice, port_call and 2 more". */
 export function sayTables(operator: Operator): string {
-	const tables: string[] = [];
-	for (const { relation, kind } of walkOperators(operator))
-		if (relation !== null && kind !== 'lookup' && !tables.includes(relation)) tables.push(relation);
-	const named = tables.slice(0, MOST_TABLES);
-	const more = tables.length - named.length;
+	const tables = new Set<string>();
+	for (const { relation } of walkOperators(operator)) if (relation !== null) tables.add(relation);
+	const named = [...tables].slice(0, MOST_TABLES);
+	const more = tables.size - named.length;
 	if (more > 0) return `${named.join(', ')} and ${more} more`;
 	return named.length > 0 ? named.join(' and ') : phraseOperator(operator);
 }
@@ -45,7 +44,8 @@ export function sayTables(operator: Operator): string {
  */
 export function nameIn(root: Operator): (operator: Operator) => string {
 	const counts = new Map<string, number>();
-	for (const operator of walkOperators(root)) counts.set(sayKind(operator), (counts.get(sayKind(operator)) ?? 0) + 1);
+	for (const operator of walkOperators(root))
+		counts.set(sayKind(operator), (counts.get(sayKind(operator)) ?? 0) + 1);
 	return (operator) => {
 		const kind = sayKind(operator);
 		const isOnly = counts.get(kind) === 1 && operator.relation === null;
