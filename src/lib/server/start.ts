@@ -5,6 +5,10 @@ import { leaveReadings } from './evidence/late-reading';
 import { recoverEvidence } from './evidence/recover-evidence';
 import { releaseRunningKeys } from './http/idempotency-store';
 import { log } from './log';
+import { startPostman } from './mail/deliver-mail';
+import { forgetOldMail } from './mail/mail-service';
+import { describeFirst } from './people/first-administrator';
+import * as resets from './people/resets-service';
 import { closePool, warmUp } from './readings/reading-pool';
 import { adoptContent } from './runbooks/adopt-content';
 import { startSearch } from './search/start-search';
@@ -24,11 +28,23 @@ function requireConfig(): Config {
 	}
 }
 
-/** Ends what is under way: readings that outlasted their request are taken up at the next start. */
-async function stopServer(): Promise<void> {
+/**
+ * Ends what is under way: readings that outlasted their request, and mail that nobody took, are taken up at the next
+ * start.
+ */
+async function stopServer(stopPostman: () => Promise<void>): Promise<void> {
 	leaveReadings();
+	await resets.settled();
+	await stopPostman();
 	await closePool();
 	await closeDatabase();
+}
+
+/** Removes what has run out: sessions, links, old mail. */
+async function tidy(): Promise<void> {
+	await sessions.deleteExpired();
+	await resets.deleteExpired();
+	await forgetOldMail();
 }
 
 /** Opens the data folder before the first request, and closes it after the last. */
@@ -42,13 +58,16 @@ export async function startServer(): Promise<void> {
 	startSearch();
 	warmUp();
 	await recoverEvidence();
+	const stopPostman = startPostman();
 	const tidying = setInterval(() => {
-		sessions.deleteExpired().catch((error: unknown) => log().error({ err: error }, 'tidying failed'));
+		tidy().catch((error: unknown) => log().error({ err: error }, 'tidying failed'));
 	}, TIDY_EVERY_MS);
 	tidying.unref();
+	// Not into the log, which is kept and passed on: the code is a secret.
+	for (const line of await describeFirst()) process.stdout.write(`${line}\n`);
 	// The adapter's event, after the last answer was sent.
 	process.once('sveltekit:shutdown', () => {
 		clearInterval(tidying);
-		stopServer().catch((error: unknown) => log().error({ err: error }, 'stopping failed'));
+		stopServer(stopPostman).catch((error: unknown) => log().error({ err: error }, 'stopping failed'));
 	});
 }

@@ -15,6 +15,10 @@ export type RouteAccess = Partial<Record<Method, Access>> & {
  * a route without its row cannot be reached. The service behind it asks again, with the thing in hand.
  */
 export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
+	'/(public)/first': { GET: 'open', POST: 'open' },
+	'/(public)/forgotten': { GET: 'open', POST: 'open' },
+	'/(public)/invitation/[token]': { GET: 'open', POST: 'open' },
+	'/(public)/reset/[token]': { GET: 'open', POST: 'open' },
 	'/(public)/sign-in': { GET: 'open', POST: 'open' },
 	'/(public)/welcome/[token]': { GET: 'open', POST: 'open' },
 	'/sign-out': { POST: 'account.own' },
@@ -55,6 +59,7 @@ export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
 	'/api/v1/openapi.json': { GET: 'open' },
 	'/api/v1/precedents': { POST: 'reading.make' },
 	'/api/v1/readings': { POST: 'reading.make' },
+	'/api/v1/readings/compare': { POST: 'reading.make' },
 	'/api/v1/search': { GET: 'search.read' },
 	'/api/v1/runbooks': { GET: 'runbook.read' },
 	'/api/v1/runbooks/[slug]': { GET: 'runbook.read' },

@@ -24,6 +24,10 @@ const tokenGuesses = new RateLimiterMemory({
 	points: TRIES_PER_ADDRESS,
 	duration: WINDOW_SECONDS
 });
+/** Wishes for a new password from one address: each may send a mail to somebody. */
+const resets = new RateLimiterMemory({ keyPrefix: 'reset', points: 10, duration: WINDOW_SECONDS });
+/** Codes tried for the first administrator, from one address. */
+const firstTries = new RateLimiterMemory({ keyPrefix: 'first', points: 20, duration: WINDOW_SECONDS });
 
 /** The eight groups of an IPv6 address, `::` written out. */
 function expandIPv6(address: string): string[] {
@@ -86,4 +90,14 @@ export async function tokenWaitSeconds(address: string): Promise<number | null> 
 	const state = await tokenGuesses.get(toNetwork(address));
 	if (!state || state.consumedPoints <= TRIES_PER_ADDRESS) return null;
 	return Math.max(1, Math.ceil(state.msBeforeNext / 1000));
+}
+
+/** Counts a wish for a new password. By address alone: a limit by person could be used up by a stranger. */
+export function countReset(address: string): Promise<Outcome<null>> {
+	return consume(resets, toNetwork(address));
+}
+
+/** Counts a try to become the first administrator. */
+export function countFirstTry(address: string): Promise<Outcome<null>> {
+	return consume(firstTries, toNetwork(address));
 }

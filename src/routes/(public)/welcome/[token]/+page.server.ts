@@ -3,9 +3,8 @@ import { PASSWORD_MIN_LENGTH } from '$lib/domain/person/password-rule';
 import { newPasswordInput } from '$lib/domain/person/person-input';
 import { readForm } from '$lib/server/http/form';
 import { failWith, unwrap } from '$lib/server/http/respond';
-import { setSessionCookie } from '$lib/server/http/session-cookie';
+import { startSession } from '$lib/server/http/start-session';
 import * as people from '$lib/server/people/people-service';
-import * as sessions from '$lib/server/sessions/sessions-service';
 import type { Actions, PageServerLoad } from './$types';
 
 export const load = (async (event) => {
@@ -19,7 +18,7 @@ export const actions = {
 		if (!input.ok) return failWith(input.problem, {});
 		const person = await people.setPasswordByLink(event.params.token, input.value.password);
 		if (!person.ok) return failWith(person.problem, {});
-		setSessionCookie(event, await sessions.create(person.value.id, event.request.headers.get('user-agent')));
+		await startSession(event, person.value.id);
 		redirect(303, '/');
 	}
 } satisfies Actions;
