@@ -15,6 +15,7 @@ import { PasswordResetModel } from './password-reset';
 import { PersonModel } from './person';
 import { ReadingModel } from './reading';
 import { RunbookModel } from './runbook';
+import { RunbookReviewModel } from './runbook-review';
 import { RunbookRevisionModel } from './runbook-revision';
 import { SessionModel } from './session';
 import { SettingModel } from './setting';
@@ -38,6 +39,7 @@ const MODELS = [
 	PersonModel,
 	ReadingModel,
 	RunbookModel,
+	RunbookReviewModel,
 	RunbookRevisionModel,
 	SessionModel,
 	SettingModel,

@@ -1,5 +1,11 @@
-import { Model, type InferAttributes, type InferCreationAttributes, type Sequelize } from 'sequelize';
-import { integer, integerOrNull, key, text } from './columns';
+import {
+	Model,
+	type CreationOptional,
+	type InferAttributes,
+	type InferCreationAttributes,
+	type Sequelize
+} from 'sequelize';
+import { integer, integerOrNull, key, text, textOrNull } from './columns';
 
 /** One text of a runbook; never changed. */
 export class RunbookRevisionModel extends Model<
@@ -19,6 +25,8 @@ export class RunbookRevisionModel extends Model<
 	declare reviewEveryDays: number;
 	declare createdAt: string;
 	declare createdById: number | null;
+	/** What its author said of the change. */
+	declare note: CreationOptional<string | null>;
 
 	static define(sequelize: Sequelize): void {
 		RunbookRevisionModel.init(
@@ -32,7 +40,8 @@ export class RunbookRevisionModel extends Model<
 				symptoms: text(),
 				reviewEveryDays: integer(),
 				createdAt: text(),
-				createdById: integerOrNull()
+				createdById: integerOrNull(),
+				note: textOrNull()
 			},
 			{ sequelize, modelName: 'RunbookRevisionModel', tableName: 'runbookRevisions' }
 		);

@@ -5,6 +5,7 @@ import {
 	type InferCreationAttributes,
 	type Sequelize
 } from 'sequelize';
+import type { DraftState } from '$lib/domain/runbook/review';
 import type { RunbookState } from '$lib/domain/runbook/runbook';
 import { integer, integerOrNull, serial, text, textOrNull } from './columns';
 
@@ -21,6 +22,8 @@ export class RunbookModel extends Model<
 	declare reviewDue: string | null;
 	declare revision: number;
 	declare publishedRevision: number | null;
+	/** How far the newest text is where an older one is published; null: there is no newer one. */
+	declare draftState: CreationOptional<DraftState | null>;
 	declare createdAt: string;
 	declare updatedAt: string;
 
@@ -35,6 +38,7 @@ export class RunbookModel extends Model<
 				reviewDue: textOrNull(),
 				revision: integer(),
 				publishedRevision: integerOrNull(),
+				draftState: textOrNull(),
 				createdAt: text(),
 				updatedAt: text()
 			},
