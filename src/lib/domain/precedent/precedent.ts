@@ -68,6 +68,8 @@ export interface EvidenceProfile {
 
 /** What the words of one incident tell of, evidence aside. */
 export interface ToldProfile {
+	/** Terms of the ideas that narrative or resolution speak of (trade-words.ts). */
+	ideas: string[];
 	toldSymptoms: SymptomId[];
 	/** Causes that the words name, or name the remedy of; `isRemedied`: in the resolution. */
 	toldCauses: { id: CauseId; isRemedied: boolean }[];
@@ -76,6 +78,7 @@ export interface ToldProfile {
 /** What two incidents are compared on beside their words. */
 export interface PrecedentProfile extends EvidenceProfile {
 	toldCauses: ToldProfile['toldCauses'];
+	ideas: string[];
 	service: string | null;
 	engine: Engine | null;
 	database: string | null;

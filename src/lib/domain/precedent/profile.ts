@@ -2,6 +2,7 @@ import type { OperatorKind } from '../reading/operator';
 import { walkOperators } from '../reading/operator';
 import type { Symptom, Trail } from '../reading/reading';
 import { findToldCauses, findToldSymptoms } from './told';
+import { findConcepts } from './trade-words';
 import type { CauseId, SymptomId } from '../symptom/symptom';
 import { CAUSE_IDS } from '../symptom/symptom';
 import { readCourse, readMagnitude } from './figures';
@@ -20,7 +21,7 @@ const MOST_RELATIONS = 20;
 const MOST_SHAPES = 4;
 const MOST_TRAITS = 40;
 /** Characters of a text that are looked through for symptoms and causes told in words. */
-const LONGEST_TOLD = 4000;
+const LONGEST_TOLD = 8000;
 /** A told symptom has no figures: it weighs as one of medium damage. */
 const TOLD_WEIGHT = 0.5;
 
@@ -46,7 +47,7 @@ export const NO_EVIDENCE: EvidenceProfile = {
 };
 
 /** The profile of an incident without words. */
-export const NOTHING_TOLD: ToldProfile = { toldSymptoms: [], toldCauses: [] };
+export const NOTHING_TOLD: ToldProfile = { ideas: [], toldSymptoms: [], toldCauses: [] };
 
 /** The profile of an incident: what its evidence shows, what its words tell of, and where it happened. */
 export function profileOf(
@@ -59,6 +60,7 @@ export function profileOf(
 		// A plan that ran shows what there is; what the words tell beside it is what somebody feared.
 		symptoms: evidence.hasRun ? evidence.symptoms : addTold(evidence.symptoms, told.toldSymptoms),
 		toldCauses: told.toldCauses,
+		ideas: told.ideas,
 		service: fields.service,
 		engine: fields.engine,
 		database: fields.database,
@@ -72,10 +74,13 @@ export function profileOf(
  * written once it was over and is believed before them.
  */
 export function profileWords(text: string, resolution: string | null): ToldProfile {
-	const remedied = findToldCauses((resolution ?? '').slice(0, LONGEST_TOLD));
 	const story = text.slice(0, LONGEST_TOLD);
-	const feared = findToldCauses(story).filter((id) => !remedied.includes(id));
+	const storyIdeas = findConcepts(story).map((idea) => idea.term);
+	const endIdeas = findConcepts((resolution ?? '').slice(0, LONGEST_TOLD)).map((idea) => idea.term);
+	const remedied = findToldCauses(endIdeas);
+	const feared = findToldCauses(storyIdeas).filter((id) => !remedied.includes(id));
 	return {
+		ideas: [...new Set([...storyIdeas, ...endIdeas])],
 		toldSymptoms: findToldSymptoms(story),
 		toldCauses: [
 			...remedied.map((id) => ({ id, isRemedied: true })),

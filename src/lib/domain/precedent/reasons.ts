@@ -10,7 +10,7 @@ import type {
 import { REASON_KINDS } from './precedent';
 import { findWords, findNames } from './tokens';
 import { stem } from './stem';
-import { CONCEPTS, findConcepts } from './trade-words';
+import { CONCEPTS } from './trade-words';
 import { SMALLEST_SHARE } from './weights';
 
 /** What the sentences are made from beside the profiles. */
@@ -66,8 +66,8 @@ function shareOut(
 type Sentence = (asked: PrecedentProfile, ranked: RankedPrecedent, context: Context) => string | null;
 
 const SENTENCES: Record<ReasonKind, Sentence> = {
-	words: (_asked, _ranked, context) => {
-		const shared = sharedWords(context);
+	words: (_asked, { candidate }, context) => {
+		const shared = sharedWords(context, candidate.profile.ideas);
 		return shared.length === 0 ? null : `words: ${shared.join(', ')}`;
 	},
 	symptoms: (asked, { candidate }, { rarity }) => {
@@ -160,16 +160,15 @@ function describeDistance(startedAt: string | null, at: string): string | null {
 }
 
 /** The words that both texts hold, as the one asked about has them, rarest first; ideas in their own words. */
-function sharedWords({ terms, askedText, text }: Context): string[] {
+function sharedWords({ terms, askedText, text }: Context, ideas: readonly string[]): string[] {
 	const present = new Map<string, string>();
 	for (const word of findWords(askedText))
 		if (!present.has(stem(word.text))) present.set(stem(word.text), word.text);
 	for (const name of findNames(askedText)) present.set(name, name);
-	const held = new Set([...[...findWords(text)].map((word) => stem(word.text)), ...findNames(text)]);
-	const ideas = new Set(findConcepts(text).map((concept) => concept.term));
+	const held = new Set([...findWords(text).map((word) => stem(word.text)), ...findNames(text)]);
 	const shared: string[] = [];
 	for (const term of terms) {
-		const idea = ideas.has(term) ? CONCEPTS.find((concept) => concept.term === term)?.title : undefined;
+		const idea = ideas.includes(term) ? CONCEPTS.find((concept) => concept.term === term)?.title : undefined;
 		const word = idea ?? (held.has(term) ? present.get(term) : undefined);
 		if (word !== undefined && !shared.includes(word)) shared.push(word);
 	}

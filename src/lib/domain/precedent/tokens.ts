@@ -11,9 +11,13 @@ export interface Word {
 
 /** Letters, digits, `_` and `$`, held together by single dots: `yard_move.moved_at` is one name. */
 const NAME = /[\p{L}\p{N}_$]+(?:\.[\p{L}_$][\p{L}\p{N}_$]*)*/gu;
+/** A word of one piece, as nearly all are: nothing to fold but its case. */
+const PLAIN = /^(?:[A-Za-z]?[a-z]*|[A-Z]+|\d+)$/;
 const ACCENTS = /\p{M}/gu;
 /** Where one word of a camelCase name ends. */
 const HUMP = /(?<=[\p{Ll}\p{N}])(?=\p{Lu})/u;
+const LETTER = /[\p{L}\p{N}]/u;
+const UNDERSCORED = /[\p{L}\p{N}]_+[\p{L}\p{N}]/u;
 
 function fold(text: string): string {
 	return text.normalize('NFKD').replace(ACCENTS, '').toLowerCase();
@@ -23,16 +27,22 @@ function fold(text: string): string {
  * The words of a text in order. A name with underscores, dots or humps yields its parts
  * ("yard_move.movedAt" yields yard, move, moved, at); the whole is what `findNames` is for.
  */
-export function* findWords(text: string): Generator<Word> {
+export function findWords(text: string): Word[] {
+	const words: Word[] = [];
 	for (const match of text.matchAll(NAME)) {
-		let start = match.index;
-		for (const piece of match[0].split(/([._$]+)/)) {
-			for (const part of piece.split(HUMP)) {
-				if (/[\p{L}\p{N}]/u.test(part)) {
-					yield { text: fold(part), start, end: start + part.length };
-				}
-				start += part.length;
-			}
+		const { 0: name, index } = match;
+		if (PLAIN.test(name)) words.push({ text: name.toLowerCase(), start: index, end: index + name.length });
+		else pushParts(words, name, index);
+	}
+	return words;
+}
+
+function pushParts(words: Word[], name: string, index: number): void {
+	let start = index;
+	for (const piece of name.split(/([._$]+)/)) {
+		for (const part of piece.split(HUMP)) {
+			if (LETTER.test(part)) words.push({ text: fold(part), start, end: start + part.length });
+			start += part.length;
 		}
 	}
 }
@@ -40,13 +50,12 @@ export function* findWords(text: string): Generator<Word> {
 /** Names that are more than one word, whole: "yard_move.moved_at" yields itself, yard_move and moved_at. */
 export function findNames(text: string): string[] {
 	const names: string[] = [];
-	for (const match of text.matchAll(NAME)) {
-		if (!/[._\p{Ll}][._\p{Lu}\p{L}]/u.test(match[0])) continue;
-		const folded = fold(match[0]);
+	for (const [name] of text.matchAll(NAME)) {
+		if (PLAIN.test(name)) continue;
+		const folded = fold(name);
 		const pieces = folded.split('.');
 		for (const piece of pieces) {
-			if (/[\p{L}\p{N}]_+[\p{L}\p{N}]/u.test(piece) || (pieces.length === 1 && HUMP.test(match[0])))
-				names.push(piece);
+			if (UNDERSCORED.test(piece) || (pieces.length === 1 && HUMP.test(name))) names.push(piece);
 		}
 		if (pieces.length > 1) names.push(folded);
 	}

@@ -1,6 +1,5 @@
 import { SYMPTOM_IDS, type CauseId, type SymptomId } from '../symptom/symptom';
 import { findToldInWords } from '../symptom/told-in-words';
-import { findConcepts } from './trade-words';
 
 /**
  * What a text tells of without any evidence: symptoms by the phrases of told-in-words.ts, causes by the ideas
@@ -36,9 +35,8 @@ export function findToldSymptoms(text: string): SymptomId[] {
 	return SYMPTOM_IDS.filter((id) => told.includes(id));
 }
 
-/** The causes that a text names, or names the remedy of, each once. */
-export function findToldCauses(text: string): CauseId[] {
-	const ideas = new Set(findConcepts(text).map((concept) => concept.term));
-	const told = CAUSES.filter(([, ...needed]) => needed.every((term) => ideas.has(term)));
+/** The causes that the ideas of a text name, or name the remedy of, each once. */
+export function findToldCauses(ideas: readonly string[]): CauseId[] {
+	const told = CAUSES.filter(([, ...needed]) => needed.every((term) => ideas.includes(term)));
 	return [...new Set(told.map(([id]) => id))];
 }

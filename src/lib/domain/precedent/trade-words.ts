@@ -258,7 +258,10 @@ export function findConcepts(text: string): Concept[] {
 		.replaceAll('’', "'")
 		.replaceAll(/\?(?!!)/g, `${DOUBTED}. `);
 	const clauses = marked.split(CLAUSE_END);
-	return CONCEPTS.filter((idea) => clauses.some((clause) => clause !== undefined && isSaidIn(clause, idea)));
+	// Most ideas are nowhere in the text: one look at the whole saves one at each clause.
+	return CONCEPTS.filter(
+		(idea) => idea.says.test(marked) && clauses.some((clause) => isSaidIn(clause ?? '', idea))
+	);
 }
 
 function isSaidIn(clause: string, idea: Concept): boolean {

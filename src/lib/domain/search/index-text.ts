@@ -15,9 +15,7 @@ export function indexText(text: string): string {
 	return termsOf(text.slice(0, LONGEST_TEXT)).join(' ');
 }
 
-/** The terms of the ideas that a text speaks of ("~spill"); empty: of none. */
-export function indexIdeas(text: string): string {
-	return findConcepts(text.slice(0, LONGEST_TEXT))
-		.map((concept) => concept.term)
-		.join(' ');
+/** The terms of the ideas that a text speaks of ("~spill"). */
+export function listIdeas(text: string): string[] {
+	return findConcepts(text.slice(0, LONGEST_TEXT)).map((concept) => concept.term);
 }

@@ -11,8 +11,14 @@ export type WordTest = (word: Word) => boolean;
 
 /** Tests words against stems, and against beginnings (the word still being typed). */
 export function matchesAny(stems: ReadonlySet<string>, beginnings: readonly string[]): WordTest {
-	return (word) =>
-		stems.has(stem(word.text)) || beginnings.some((beginning) => word.text.startsWith(beginning));
+	const known = new Map<string, boolean>();
+	return ({ text }) => {
+		const seen = known.get(text);
+		if (seen !== undefined) return seen;
+		const isMet = stems.has(stem(text)) || beginnings.some((beginning) => text.startsWith(beginning));
+		known.set(text, isMet);
+		return isMet;
+	};
 }
 
 /**
@@ -23,7 +29,7 @@ export function matchesAny(stems: ReadonlySet<string>, beginnings: readonly stri
 export function cutSnippet(text: string, isMet: WordTest): SearchHit['snippet'] {
 	const flat = text.replaceAll(/\s+/g, ' ').trim();
 	if (flat === '') return [];
-	const met = [...findWords(flat)].filter(isMet);
+	const met = findWords(flat).filter(isMet);
 	const start = chooseStart(flat, met);
 	const end = cutEnd(flat, start + LENGTH);
 	const parts: SearchHit['snippet'] = [];

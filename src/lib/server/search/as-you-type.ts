@@ -41,7 +41,7 @@ export class AsYouType {
 	readonly #index = new MiniSearch<ShortDocument>({
 		fields: ['key', 'title', 'place', 'symptoms', 'people'],
 		storeFields: ['kind', 'key'],
-		tokenize: (text) => [...[...findWords(text)].map((word) => word.text), ...findNames(text)],
+		tokenize: (text) => [...findWords(text).map((word) => word.text), ...findNames(text)],
 		processTerm: (term) => (STOP_WORDS.has(term) ? null : term),
 		searchOptions: {
 			boost: BOOST,
@@ -95,7 +95,7 @@ export class AsYouType {
 	/** What meets all the words, best first. */
 	find(words: readonly string[], limit: number): ShortHit[] {
 		return this.#index
-			.search(words.join(' '), { tokenize: (text) => [...findWords(text)].map((word) => word.text) })
+			.search(words.join(' '), { tokenize: (text) => findWords(text).map((word) => word.text) })
 			.slice(0, limit)
 			.map((result) => ({
 				kind: result.kind as ShortHit['kind'],

@@ -19,17 +19,20 @@ export async function describeHits(
 	isMet: WordTest,
 	limit: number
 ): Promise<SearchHit[]> {
-	const described = await describeAll(ranked, query, isMet);
 	const hits: SearchHit[] = [];
 	const shown = new Set<string>();
-	for (const { id, score } of ranked) {
-		if (hits.length >= limit) break;
-		const hit = described.get(id);
-		if (hit === undefined) continue;
-		const page = hit.url.replace(/#.*$/, '');
-		if (hit.kind === 'entry' && shown.has(page)) continue;
-		shown.add(page);
-		hits.push({ ...hit, score: Math.min(1, Math.round(score * 1000) / 1000) });
+	// Mostly the first `limit` are all that is shown; what comes behind is read when one of them falls out.
+	for (let from = 0; from < ranked.length && hits.length < limit; from += limit) {
+		const part = ranked.slice(from, from + limit);
+		const described = await describeAll(part, query, isMet);
+		for (const { id, score } of part) {
+			const hit = described.get(id);
+			if (hit === undefined || hits.length >= limit) continue;
+			const page = hit.url.replace(/#.*$/, '');
+			if (hit.kind === 'entry' && shown.has(page)) continue;
+			shown.add(page);
+			hits.push({ ...hit, score: Math.min(1, Math.round(score * 1000) / 1000) });
+		}
 	}
 	return hits;
 }
@@ -59,7 +62,9 @@ async function describeAll(
 		const snippet = bestSnippet(texts, isMet);
 		described.set(`runbook:${key}`, { kind: 'runbook', id: key, title, url: `/runbooks/${key}`, snippet });
 	}
+	const symptoms = new Set(keysOf(ranked, 'symptom'));
 	for (const { id: key, title, texts } of listSymptomTexts()) {
+		if (!symptoms.has(key)) continue;
 		const snippet = bestSnippet(texts, isMet);
 		described.set(`symptom:${key}`, { kind: 'symptom', id: key, title, url: `/symptoms/${key}`, snippet });
 	}
@@ -93,7 +98,11 @@ function bestSnippet(texts: readonly string[], isMet: WordTest): SearchHit['snip
 		.filter((text) => text.trim() !== '')
 		.map((text) => ({
 			text,
-			met: new Set([...findWords(text)].filter(isMet).map((word) => word.text)).size
+			met: new Set(
+				findWords(text)
+					.filter(isMet)
+					.map((word) => word.text)
+			).size
 		}));
 	const best = counted.reduce<(typeof counted)[number] | null>(
 		(found, next) => (found === null || next.met > found.met ? next : found),

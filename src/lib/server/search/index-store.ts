@@ -34,6 +34,9 @@ export function listEntryTexts(number: number): Promise<{ id: number; revision: 
 	});
 }
 
+/** Evidence of how it was after a remedy tells nothing of what the incident was. */
+const OF_THE_INCIDENT = 'NOT EXISTS (SELECT 1 FROM attempts a WHERE a.afterEvidenceId = e.id)';
+
 /** Names of an incident's evidence, and the ids of its readings as one text that changes whenever they do. */
 export async function readEvidenceState(number: number): Promise<{ names: string[]; readingIds: string }> {
 	const names = await select<{ name: string }>(
@@ -42,7 +45,7 @@ export async function readEvidenceState(number: number): Promise<{ names: string
 	);
 	const ids = await select<{ id: number }>(
 		`SELECT r.id FROM readings r JOIN evidence e ON e.id = r.evidenceId
-		WHERE e.incidentNumber = :number ORDER BY r.id`,
+		WHERE e.incidentNumber = :number AND ${OF_THE_INCIDENT} ORDER BY r.id`,
 		{ number }
 	);
 	return { names: names.map((row) => row.name), readingIds: ids.map((row) => row.id).join(',') };
@@ -51,7 +54,7 @@ export async function readEvidenceState(number: number): Promise<{ names: string
 export async function listReadings(number: number): Promise<Reading[]> {
 	const rows = await select<{ body: string }>(
 		`SELECT r.body FROM readings r JOIN evidence e ON e.id = r.evidenceId
-		WHERE e.incidentNumber = :number ORDER BY r.id`,
+		WHERE e.incidentNumber = :number AND ${OF_THE_INCIDENT} ORDER BY r.id`,
 		{ number }
 	);
 	return rows.map((row) => fromJson<Reading>(row.body));

@@ -1,7 +1,7 @@
 import { featuresOf } from '$lib/domain/precedent/features';
 import type { EvidenceProfile } from '$lib/domain/precedent/precedent';
 import { profileEvidence, profileWords } from '$lib/domain/precedent/profile';
-import { ANALYSIS, indexIdeas, indexText } from '$lib/domain/search/index-text';
+import { ANALYSIS, indexText, listIdeas } from '$lib/domain/search/index-text';
 import { evidenceWords } from '$lib/domain/search/evidence-words';
 import { write, type Transaction } from '$lib/server/db/transaction';
 import { asYouType } from './as-you-type';
@@ -23,21 +23,18 @@ export async function incidentChanged(number: number, transaction: Transaction):
 	const { evidence, words } = await drawEvidence(number, readingIds, stored);
 	const entries = await store.listEntryTexts(number);
 	const entryText = entries.map((entry) => entry.text).join('\n\n');
-	const told = [incident.title, incident.narrative, incident.resolution ?? '', entryText].join('\n\n');
+	const told = profileWords(`${incident.title}\n${incident.narrative}`, incident.resolution);
 	await store.writeIncidentTerms(number, {
 		title: indexText(incident.title),
 		narrative: indexText([incident.narrative, incident.cause ?? '', ...incident.labels].join('\n')),
 		resolution: indexText(incident.resolution ?? ''),
 		entries: indexText(entryText),
 		evidence: indexText([words, ...names].join('\n')),
-		ideas: indexIdeas(told)
+		ideas: [...new Set([...told.ideas, ...listIdeas(entryText)])].join(' ')
 	});
 	const isCurrent = stored?.analysis === ANALYSIS;
 	await store.writeProfile(number, {
-		profile: {
-			...evidence,
-			...profileWords(`${incident.title}\n${incident.narrative}`, incident.resolution)
-		},
+		profile: { ...evidence, ...told },
 		words,
 		readingIds,
 		entries: await indexEntries(entries, isCurrent ? stored.entries : ''),

@@ -108,7 +108,7 @@ async function findShort(query: SearchQuery, depth: number): Promise<string[]> {
 function toExpression(query: SearchQuery): string | null {
 	const finished = query.phrases.length > 0 ? query.words : query.words.slice(0, -1);
 	const last = query.phrases.length > 0 ? undefined : query.words.at(-1);
-	const lastWords = last === undefined ? [] : [...findWords(last)].map((word) => word.text);
+	const lastWords = last === undefined ? [] : findWords(last).map((word) => word.text);
 	const unfinished = lastWords.at(-1);
 	return allOf({
 		phrases: [...finished, ...query.phrases, lastWords.slice(0, -1).join(' ')].map(stemsOf),
@@ -120,6 +120,11 @@ function toExpression(query: SearchQuery): string | null {
 function toWordTest(query: SearchQuery) {
 	const stems = new Set([...query.words, ...query.phrases].flatMap(stemsOf));
 	const last = query.words.at(-1);
-	const beginnings = last === undefined ? [] : [...findWords(last)].slice(-1).map((word) => word.text);
+	const beginnings =
+		last === undefined
+			? []
+			: findWords(last)
+					.slice(-1)
+					.map((word) => word.text);
 	return matchesAny(stems, beginnings);
 }

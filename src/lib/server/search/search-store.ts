@@ -3,7 +3,7 @@ import { fromJson } from '$lib/server/db/json';
 import { select, type Replacements } from '$lib/server/db/query';
 
 /** Characters of a long text that a snippet is looked for in. */
-const SNIPPET_TEXT = 20_000;
+const SNIPPET_TEXT = 8000;
 
 /** Conditions on incidents `i` for the filters, and their parameters. */
 function toConditions(filters: SearchFilters): { sql: string; values: Replacements } {

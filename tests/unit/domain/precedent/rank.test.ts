@@ -147,7 +147,7 @@ describe('explain', () => {
 	});
 
 	it('names words as they were typed, and ideas in their own words', () => {
-		const shown = reasonsFor(words, makeCandidate(1, {}, { bm25: 5 }), {
+		const shown = reasonsFor(words, makeCandidate(1, { ideas: ['~spill'] }, { bm25: 5 }), {
 			terms: ['month', 'batch', '~spill', 'end'],
 			text: 'batches of the month spilled'
 		});
