@@ -1,7 +1,8 @@
 import { describe, expect, test } from 'vitest';
 import type { Sizing } from '$lib/domain/sizing/sizing';
 import { withDatabase } from '../../../fixtures/database';
-import { request } from '../../../fixtures/request';
+import { makePerson } from '../../../fixtures/factories/person';
+import { ORIGIN, request, signInAs } from '../../../fixtures/request';
 
 withDatabase();
 
@@ -48,5 +49,16 @@ describe('POST /api/v1/sizing', () => {
 		const sizing = (await response.json()) as Sizing;
 		expect(sizing).toMatchObject({ batches: 4, passes: null, setting: { name: 'work_mem' } });
 		expect(sizing.table.map(({ batches }) => batches)).toEqual([16, 8, 4, 2, 1]);
+	});
+
+	test('replays the first answer to the same Idempotency-Key and refuses another body with it', async () => {
+		const person = await makePerson({ role: 'reader' });
+		const as = { cookie: await signInAs(person.id) };
+		const headers = { 'idempotency-key': 'sizing-once', origin: ORIGIN };
+		const first = await request('POST', '/api/v1/sizing', { as, body: input, headers });
+		const again = await request('POST', '/api/v1/sizing', { as, body: input, headers });
+		expect(await again.json()).toEqual(await first.json());
+		const other = await request('POST', '/api/v1/sizing', { as, body: { ...input, rows: 5 }, headers });
+		expect(other.status).toBe(422);
 	});
 });
