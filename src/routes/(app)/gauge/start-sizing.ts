@@ -1,12 +1,15 @@
 import { walkOperators, type Operator } from '$lib/domain/reading/operator';
 import { phraseOperator } from '$lib/domain/reading/operator-phrase';
 import type { Engine, OperatorSizing, Reading } from '$lib/domain/reading/reading';
+import { computeSizing } from '$lib/domain/sizing/compute-sizing';
 import { defaultHashMemMultiplier, readMajorVersion } from '$lib/domain/sizing/layout';
 import type { SizingInput } from '$lib/domain/sizing/sizing';
 import { formatKb, readMemoryKb } from '$lib/domain/sizing/units';
 
 /** PostgreSQL's default work_mem (manual 15, section 20.4.1). */
 const DEFAULT_WORK_MEM_KB = 4096;
+/** What the panel's slider ends at. */
+export const WIDEST_BYTES = 8192;
 /** Sessions assumed at first: a figure to be changed, not a finding. */
 const ASSUMED_SESSIONS = 40;
 
@@ -61,7 +64,7 @@ function startSizing(reading: Reading, sizing: OperatorSizing): SizingInput | nu
 	const version = readMajorVersion(reading.engineVersion);
 	const multiplier =
 		Number(settings['hash_mem_multiplier'] ?? Number.NaN) || defaultHashMemMultiplier(version);
-	return {
+	const input: SizingInput = {
 		kind: sizing.kind,
 		rows,
 		width: operator.width ?? EXAMPLE.width,
@@ -71,6 +74,23 @@ function startSizing(reading: Reading, sizing: OperatorSizing): SizingInput | nu
 		...(reading.engineVersion === null ? {} : { engineVersion: reading.engineVersion }),
 		sessions: ASSUMED_SESSIONS
 	};
+	return { ...input, width: widen(input, sizing.setting.valueKb) };
+}
+
+/**
+ * The row width at which the panel needs no less than the reading found. The reading knows the true size of the
+ * rows from what they took on disk; the plan prints the planner's guess, and a setting worked out from a guess
+ * that is too small would overflow again.
+ */
+function widen(input: SizingInput, settingKb: number): number {
+	const isEnough = (width: number) => computeSizing({ ...input, width }).setting.valueKb >= settingKb;
+	let enough = WIDEST_BYTES;
+	for (let tooLittle = Math.floor(input.width) - 1; enough - tooLittle > 1;) {
+		const middle = Math.floor((tooLittle + enough) / 2);
+		if (isEnough(middle)) enough = middle;
+		else tooLittle = middle;
+	}
+	return isEnough(input.width) ? input.width : enough;
 }
 
 /** The operator whose rows fill the memory: of a hash join the side that is hashed. */

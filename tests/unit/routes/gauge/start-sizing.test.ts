@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { computeSizing } from '$lib/domain/sizing/compute-sizing';
 import { makeOverflowingReading, makeReading } from '../../../fixtures/factories/reading';
 import { listStarts } from '../../../../src/routes/(app)/gauge/start-sizing';
 
@@ -26,5 +27,19 @@ describe('listStarts', () => {
 		const starts = listStarts(reading);
 		expect(starts.find((start) => start.input.kind === 'hash')?.input.memoryKb).toBe(4096);
 		expect(starts.find((start) => start.input.kind === 'sort')?.input.memoryKb).toBe(4096);
+	});
+
+	// A setting below what the reading found would overflow again (the rows on disk were wider than planned).
+	it('never starts from figures that need less than the reading found', () => {
+		const reading = makeOverflowingReading();
+		const found = reading.sizing.map(({ operator, setting }) => ({
+			path: operator,
+			valueKb: setting.valueKb
+		}));
+		for (const { path, input } of listStarts(reading)) {
+			const needed = found.find((one) => one.path === path)?.valueKb ?? Infinity;
+			expect(computeSizing(input).setting.valueKb).toBeGreaterThanOrEqual(needed);
+			expect(computeSizing({ ...input, width: input.width - 1 }).setting.valueKb).toBeLessThan(needed * 1.2);
+		}
 	});
 });
