@@ -13,6 +13,8 @@ import { cleanName, type Upload } from './upload';
 export interface Received {
 	/** Files of the asked-for field, and texts pasted under its name. */
 	uploads: Upload[];
+	/** The same for each field of `more`. */
+	more: Record<string, Upload[]>;
 	/** The other fields; of one given twice, the last. */
 	fields: Record<string, string>;
 }
@@ -20,6 +22,8 @@ export interface Received {
 export interface ReceiveOptions {
 	/** Name of the field that carries files. */
 	field: string;
+	/** Further fields that carry files, each for itself. */
+	more?: readonly string[];
 	/** Fields of text that programs like to send as a file of JSON. */
 	documents?: readonly string[];
 }
@@ -137,7 +141,7 @@ function toProblem(error: unknown): { ok: false; problem: Problem } {
 
 /** Runs multer over the request's body; resolves when every part is in the spool. */
 function runMulter(request: Request, storage: SpoolStorage, options: ReceiveOptions): Promise<unknown> {
-	const accepted = [options.field, ...(options.documents ?? [])].map((name) => ({
+	const accepted = [...filesOf(options), ...(options.documents ?? [])].map((name) => ({
 		name,
 		maxCount: MOST_FILES
 	}));
@@ -165,6 +169,11 @@ function runMulter(request: Request, storage: SpoolStorage, options: ReceiveOpti
 	});
 }
 
+/** The fields that carry files. */
+function filesOf({ field, more = [] }: ReceiveOptions): string[] {
+	return [field, ...more];
+}
+
 /** The text fields of a request, each a list: names may repeat. */
 function toTexts(body: unknown): Map<string, string[]> {
 	const texts = new Map<string, string[]>();
@@ -184,24 +193,27 @@ async function sortParts(
 	texts: Map<string, string[]>,
 	options: ReceiveOptions
 ): Promise<Outcome<Received>> {
-	for (const pasted of texts.get(options.field) ?? [])
-		if (pasted.trim() !== '')
-			await storage.add(Readable.from([Buffer.from(pasted)]), options.field, 'paste.txt', 'text/plain');
+	for (const field of filesOf(options))
+		for (const pasted of texts.get(field) ?? [])
+			if (pasted.trim() !== '')
+				await storage.add(Readable.from([Buffer.from(pasted)]), field, 'paste.txt', 'text/plain');
 	const fields: Record<string, string> = {};
 	for (const [name, values] of texts) {
 		const last = values.at(-1);
-		if (name !== options.field && last !== undefined) fields[name] = last;
+		if (!filesOf(options).includes(name) && last !== undefined) fields[name] = last;
 	}
 	const uploads: Upload[] = [];
+	const more: Record<string, Upload[]> = {};
 	for (const { field, ...upload } of storage.list()) {
 		if (field === options.field) uploads.push(upload);
+		else if (options.more?.includes(field)) more[field] = [...(more[field] ?? []), upload];
 		else if (upload.bytes > MOST_DOCUMENT_BYTES) return refuseTooLarge();
 		else {
 			fields[field] = await readFile(upload.path, 'utf8');
 			await removeFromSpool([upload.path]);
 		}
 	}
-	return ok({ uploads, fields });
+	return ok({ uploads, more, fields });
 }
 
 /**
@@ -216,7 +228,10 @@ export async function receiveUploads(
 	const { request } = event;
 	const type = request.headers.get('content-type') ?? '';
 	if (!/^multipart\/form-data\s*(;|$)/i.test(type))
-		return fail('unsupported', `Send multipart/form-data with files under the name ${options.field}.`);
+		return fail(
+			'unsupported',
+			`Send multipart/form-data with files under the name ${filesOf(options).join(' and ')}.`
+		);
 	const size = refuseOversized(request);
 	if (!size.ok) return size;
 	const storage = new SpoolStorage();

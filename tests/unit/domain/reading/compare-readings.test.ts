@@ -1,21 +1,13 @@
-import { readFileSync, readdirSync } from 'node:fs';
-import path from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { compareReadings, nameChanges, type Comparison } from '$lib/domain/reading/compare-readings';
 import { walkOperators } from '$lib/domain/reading/operator';
 import type { Reading } from '$lib/domain/reading/reading';
-import { readOne } from '../../../fixtures/evidence';
+import { COMPARED_CASES as CASES, readSide } from '../../../fixtures/compare';
+import { readOne } from '../../../fixtures/evidence-files';
 
 /** Real pairs: plans of PostgreSQL 15.18 before and after a remedy; each case's note.md names it. */
-const FOLDER = path.join(import.meta.dirname, '../../../fixtures/evidence/compare');
-const CASES = readdirSync(FOLDER);
-
 async function readPair(name: string): Promise<{ before: Reading; after: Reading }> {
-	const read = (start: string) => {
-		const file = readdirSync(path.join(FOLDER, name)).find((one) => one.startsWith(start)) ?? '';
-		return readOne(readFileSync(path.join(FOLDER, name, file)));
-	};
-	return { before: await read('before'), after: await read('after') };
+	return { before: await readOne(readSide(name, 'before')), after: await readOne(readSide(name, 'after')) };
 }
 
 async function compareCase(name: string): Promise<Comparison> {
@@ -113,14 +105,11 @@ describe('compareReadings', () => {
 	// Temp Written Blocks of the root × 8,192 (EXPLAIN's own sum; manual 15, EXPLAIN, BUFFERS).
 	it('sums temporary bytes as the engine does', async () => {
 		const { before, after } = await readPair('statistics-taken-swap-the-build-side');
-		const rootBlocks = (file: string) => {
-			const text = readFileSync(path.join(FOLDER, 'statistics-taken-swap-the-build-side', file), 'utf8');
-			return Number(/"Temp Written Blocks": (\d+)/.exec(text)?.[1]);
+		const rootBytes = (side: 'before' | 'after') => {
+			const text = String(readSide('statistics-taken-swap-the-build-side', side));
+			return Number(/"Temp Written Blocks": (\d+)/.exec(text)?.[1]) * 8192;
 		};
-		expect(compareReadings(before, after).temporaryBytes).toEqual([
-			rootBlocks('before.json') * 8192,
-			rootBlocks('after.json') * 8192
-		]);
+		expect(compareReadings(before, after).temporaryBytes).toEqual([rootBytes('before'), rootBytes('after')]);
 	});
 
 	it('matches a join whose sides were swapped, and each table with itself', async () => {

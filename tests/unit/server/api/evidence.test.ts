@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { overrideConfig } from '$lib/server/config';
 import { select } from '$lib/server/db/query';
 import { callOf, readAnswer } from '../../../fixtures/api';
+import { readSide } from '../../../fixtures/compare';
 import { withDatabase } from '../../../fixtures/database';
 import { makeIncident } from '../../../fixtures/factories/incident';
 import { request } from '../../../fixtures/request';
@@ -99,6 +100,67 @@ describe('POST /api/v1/readings', () => {
 		const { readings } = await readAnswer<Readings>(response, 'POST', '/readings');
 		expect(readings.map(({ format }) => format)[0]).toBe('postgres-log');
 		expect(readings.at(-1)).toMatchObject({ name: 'plan.json', format: 'postgres-json' });
+	});
+});
+
+describe('POST /api/v1/readings/compare', () => {
+	const PATH = '/api/v1/readings/compare';
+	const PAIR = 'statistics-taken-swap-the-build-side';
+	const pairForm = (...parts: [string, Uint8Array | string][]): FormData => {
+		const data = new FormData();
+		for (const [field, content] of parts)
+			data.append(
+				field,
+				new Blob([typeof content === 'string' ? content : new Uint8Array(content)]),
+				`${field}.json`
+			);
+		return data;
+	};
+	const before = readSide(PAIR, 'before');
+	const after = readSide(PAIR, 'after');
+
+	it('refuses a stranger and a body that is no form', async () => {
+		expect((await request('POST', PATH, { body: pairForm() })).status).toBe(401);
+		expect((await request('POST', PATH, { as: 'reader', body: { before: 1 } })).status).toBe(415);
+	});
+
+	it.each([
+		['after', pairForm(['before', before])],
+		['before', pairForm(['after', after])],
+		['before', pairForm(['before', before], ['before', before], ['after', after])]
+	])('names the field %s where there is not one file', async (field, body) => {
+		const response = await request('POST', PATH, { as: 'reader', body });
+		expect(response.status).toBe(400);
+		expect(await response.json()).toMatchObject({ code: 'invalid', errors: [{ field }] });
+		expect(await listDataFiles('spool')).toEqual([]);
+	});
+
+	it('names a field that it does not know', async () => {
+		const body = pairForm(['before', before], ['after', after], ['later', after]);
+		const response = await request('POST', PATH, { as: 'reader', body });
+		expect(await response.json()).toMatchObject({ code: 'invalid', errors: [{ field: 'later' }] });
+	});
+
+	it('answers what changed and stores nothing', async () => {
+		const body = pairForm(['before', before], ['after', after]);
+		const response = await request('POST', PATH, { as: 'reader', body });
+		const comparison = await readAnswer(response, 'POST', '/readings/compare');
+		expect(comparison).toMatchObject({
+			summary: expect.stringMatching(/^Time fell from 666 to 388 ms/),
+			timeMs: [666.345, 387.686],
+			symptomsGone: ['row-underestimate', 'sort-spill']
+		});
+		expect(await select('SELECT id FROM evidence')).toEqual([]);
+		expect(await listDataFiles('spool')).toEqual([]);
+	});
+
+	it('answers in words where there is nothing to compare', async () => {
+		const body = pairForm(['before', before], ['after', 'no plan']);
+		const response = await request('POST', PATH, { as: 'reader', body });
+		expect(await readAnswer(response, 'POST', '/readings/compare')).toMatchObject({
+			summary: expect.stringMatching(/^Before is a plan, after neither/),
+			operators: []
+		});
 	});
 });
 

@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import type { Call } from '../call';
 import { evidenceShape } from '../shapes/incident';
-import { readingShape } from '../shapes/reading';
+import { comparisonShape, readingShape } from '../shapes/reading';
 import { evidencePart } from './evidence-part';
 
 /** Evidence that is read, kept and fetched outside an incident. */
@@ -21,6 +21,25 @@ export const EVIDENCE_CALLS: readonly Call[] = [
 			status: 200,
 			what: 'One reading a plan or log; of what is unknown or empty, one that says so in a warning.',
 			shape: z.object({ readings: z.array(readingShape) })
+		}
+	},
+	{
+		method: 'post',
+		path: '/readings/compare',
+		id: 'compareReadings',
+		summary: 'Compare two plans or two logs and store nothing',
+		group: 'readings',
+		body: {
+			multipart: [
+				{ name: 'before', kind: 'file', what: 'The plan or log before; one file.', required: true },
+				{ name: 'after', kind: 'file', what: 'The plan or log after; one file.', required: true }
+			],
+			required: true
+		},
+		answer: {
+			status: 200,
+			what: 'What changed; of files with several plans, those of one statement are compared.',
+			shape: comparisonShape
 		}
 	},
 	{

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import type { Comparison } from '$lib/domain/reading/compare-readings';
 import { OPERATOR_KINDS, type Operator } from '$lib/domain/reading/operator';
 import { ENGINES, FORMATS, type Cause, type Reading, type Symptom } from '$lib/domain/reading/reading';
 import { CAUSE_IDS, SYMPTOM_IDS } from '$lib/domain/symptom/symptom';
@@ -129,6 +130,27 @@ export const readingShape = shapeOf<Reading>()(
 				code: z.string(),
 				message: z.string(),
 				at: z.object({ line: z.number(), column: z.number() }).nullable()
+			})
+		)
+	})
+);
+
+const figures = z.tuple([figure, figure]).describe('Before and after.');
+
+/** Two readings held beside each other. */
+export const comparisonShape = shapeOf<Comparison>()(
+	'Comparison',
+	z.object({
+		summary: z.string(),
+		timeMs: figures,
+		temporaryBytes: figures,
+		symptomsGone: z.array(z.enum(SYMPTOM_IDS)),
+		symptomsNew: z.array(z.enum(SYMPTOM_IDS)),
+		operators: z.array(
+			z.object({
+				before: text.describe('Path in the plan before; null: it is new.'),
+				after: text.describe('Path in the plan after; null: it is gone.'),
+				changes: z.array(z.string()).describe('Empty: nothing beyond the noise of two runs.')
 			})
 		)
 	})
