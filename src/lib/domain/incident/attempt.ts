@@ -1,4 +1,5 @@
 import type { Person } from '../person/person';
+import type { Comparison } from '../reading/compare-readings';
 
 export const OUTCOMES = ['worked', 'partly', 'no-effect', 'made-worse'] as const;
 export type AttemptOutcome = (typeof OUTCOMES)[number];
@@ -27,7 +28,7 @@ export interface Attempt {
 	/** Ids of evidence. */
 	before: number | null;
 	after: number | null;
-	/** Always null until two readings can be compared. */
-	comparison: null;
+	/** Of the plans before and after; null while one of them is missing or holds no plan. */
+	comparison: Comparison | null;
 	revision: number;
 }

@@ -56,6 +56,27 @@ export async function listEvidence(incidentNumber: number): Promise<Evidence[]> 
 	return withReadings(await selectRows('e.incidentNumber = :incidentNumber', { incidentNumber }));
 }
 
+/** The evidence of an incident that tells what the incident was: without what shows how it is after a remedy. */
+export async function listEvidenceOfFault(incidentNumber: number): Promise<Evidence[]> {
+	return withReadings(
+		await selectRows(
+			`e.incidentNumber = :incidentNumber
+			AND NOT EXISTS (SELECT 1 FROM attempts a WHERE a.afterEvidenceId = e.id)`,
+			{ incidentNumber }
+		)
+	);
+}
+
+/** The id of the plan that was added to an incident last; null: it has none. */
+export async function findNewestPlan(incidentNumber: number): Promise<number | null> {
+	const row = await selectOne<{ id: number }>(
+		`SELECT id FROM evidence WHERE incidentNumber = :incidentNumber AND kind = 'plan'
+		ORDER BY addedAt DESC, id DESC LIMIT 1`,
+		{ incidentNumber }
+	);
+	return row?.id ?? null;
+}
+
 /** Evidence of these ids with its readings, in the order of the ids. */
 export async function readEvidenceById(ids: readonly number[]): Promise<Evidence[]> {
 	if (ids.length === 0) return [];

@@ -9,7 +9,7 @@ import {
 	type IncidentChanges,
 	type IncidentRow
 } from '../incidents/incident-store';
-import { listEvidence } from './evidence-store';
+import { listEvidence, listEvidenceOfFault } from './evidence-store';
 
 /** The heaviest weight of each symptom that the readings show. */
 function weighSymptoms(readings: readonly Reading[]): Map<SymptomId, number> {
@@ -50,8 +50,8 @@ function fillSetting(
 }
 
 /**
- * Brings an incident into line with its evidence: its symptoms are the union over all readings; engine,
- * version, service and database are filled where nobody gave them, and never overwritten. Its revision stays: whoever
+ * Brings an incident into line with its evidence: its symptoms are the union over all readings but those of
+ * evidence after a remedy, which show what is left of them; engine, version, service and database are filled where nobody gave them, and never overwritten. Its revision stays: whoever
  * edits a text meanwhile has nothing to reconcile.
  */
 export async function refreshIncident(
@@ -62,7 +62,8 @@ export async function refreshIncident(
 ): Promise<void> {
 	const incident = await findIncident(number);
 	if (incident === null) return;
+	const ofFault = (await listEvidenceOfFault(number)).flatMap((evidence) => evidence.readings);
+	await replaceSymptoms(number, weighSymptoms(ofFault), transaction);
 	const readings = (await listEvidence(number)).flatMap((evidence) => evidence.readings);
-	await replaceSymptoms(number, weighSymptoms(readings), transaction);
 	await updateIncident(number, { ...fillSetting(incident, readings, hints), updatedAt: now }, transaction);
 }

@@ -9,7 +9,8 @@ import { fail, ok, type FieldIssue, type Outcome } from '$lib/domain/problem';
 import { cutPage, readCursor } from '../api/cursor';
 import { record } from '../audit/audit-service';
 import { write, type Transaction } from '../db/transaction';
-import { findEvidence } from '../evidence/evidence-store';
+import { findEvidence, findNewestPlan } from '../evidence/evidence-store';
+import { refreshIncident } from '../evidence/refresh-incident';
 import * as runbooks from '../runbooks/runbooks-service';
 import { incidentChanged } from '../search/indexing';
 import {
@@ -20,6 +21,7 @@ import {
 	updateAttempt,
 	updateSteps
 } from './attempt-store';
+import { withComparisons } from './compare-attempts';
 import { insertEntry } from './entry-store';
 import { hasIncident, touchIncident } from './incident-store';
 import { escapeMarkdown } from './log-changes';
@@ -54,13 +56,20 @@ export async function list(
 		countAttempts(number)
 	]);
 	const { rows, next } = cutPage(found, query.limit, name, ({ startedAt, id }) => ({ key: startedAt, id }));
-	return ok({ items: rows, next, total });
+	return ok({ items: await withComparisons(rows), next, total });
+}
+
+/** One attempt with its comparison; null where the incident has none of that id. */
+async function findCompared(number: number, id: number): Promise<Attempt | null> {
+	const attempt = await findAttempt(number, id);
+	const [compared] = attempt === null ? [] : await withComparisons([attempt]);
+	return compared ?? null;
 }
 
 /** One attempt of an incident. */
 export async function read(actor: Actor, number: number, id: number): Promise<Outcome<Attempt>> {
 	if (!can(actor, 'attempt.read')) return fail('forbidden', 'Reading attempts takes a reader.');
-	const attempt = await findAttempt(number, id);
+	const attempt = await findCompared(number, id);
 	return attempt === null ? noAttempt(number, id) : ok(attempt);
 }
 
@@ -128,7 +137,10 @@ async function logAttempt(
 	await incidentChanged(incidentNumber, transaction);
 }
 
-/** Starts an attempt: of a published runbook, whose steps it copies, or of a free action with a title. */
+/**
+ * Starts an attempt: of a published runbook, whose steps it copies, or of a free action with a title. Before is
+ * the incident's newest plan, unless the input names another one or none.
+ */
 export async function start(actor: Actor, number: number, input: AttemptInput): Promise<Outcome<Attempt>> {
 	if (!can(actor, 'attempt.write')) return needsResponder();
 	const now = new Date().toISOString();
@@ -149,7 +161,7 @@ export async function start(actor: Actor, number: number, input: AttemptInput): 
 				byId: actor.personId,
 				outcome: null,
 				note: input.note ?? null,
-				beforeEvidenceId: input.before ?? null,
+				beforeEvidenceId: input.before === undefined ? await findNewestPlan(number) : input.before,
 				afterEvidenceId: null,
 				revision: 1
 			},
@@ -200,9 +212,14 @@ async function writeChange(
 		{ incident: number, outcome: change.outcome, steps: change.steps.map((step) => step.number) },
 		transaction
 	);
+	// What the plan after shows is no symptom of the incident any more, or is one again.
+	const symptomsMove = change.after !== before.after;
+	if (symptomsMove) await refreshIncident(number, [], now, transaction);
 	const text = describeOutcome(before, change);
-	if (text === null) await touchIncident(number, now, transaction);
-	else await logAttempt(actor, { number, at: change.endedAt ?? now, now, text }, transaction);
+	if (text === null) {
+		await touchIncident(number, now, transaction);
+		if (symptomsMove) await incidentChanged(number, transaction);
+	} else await logAttempt(actor, { number, at: change.endedAt ?? now, now, text }, transaction);
 }
 
 /** Ticks and skips steps by number, records the outcome, names the evidence before and after. */
@@ -217,7 +234,8 @@ export async function update(
 	const written = await write(async (transaction): Promise<Outcome<null>> => {
 		const before = await findAttempt(number, id);
 		if (before === null) return noAttempt(number, id);
-		if (before.revision !== revision) return changedMeanwhile(`Attempt ${id}`, revision, before);
+		if (before.revision !== revision)
+			return changedMeanwhile(`Attempt ${id}`, revision, await findCompared(number, id));
 		const change = changeAttempt(before, patch, {
 			personId: actor.personId,
 			now: new Date().toISOString()

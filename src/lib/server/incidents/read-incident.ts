@@ -3,6 +3,7 @@ import type { Actor } from '$lib/domain/person/person';
 import { listEvidence } from '../evidence/evidence-store';
 import { linkEvidence } from '../evidence/link-runbooks';
 import { listAttempts } from './attempt-store';
+import { withComparisons } from './compare-attempts';
 import { listEntries } from './entry-store';
 import { findIncident, toSummary } from './incident-store';
 
@@ -19,7 +20,7 @@ export async function readIncident(actor: Actor, number: number): Promise<Incide
 		...toSummary(row),
 		evidence: await linkEvidence(actor, evidence),
 		entries,
-		attempts,
+		attempts: await withComparisons(attempts, evidence),
 		followUps: []
 	};
 }

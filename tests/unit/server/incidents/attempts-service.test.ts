@@ -5,12 +5,14 @@ import type { Actor } from '$lib/domain/person/person';
 import { execute, select } from '$lib/server/db/query';
 import * as evidence from '$lib/server/evidence/evidence-service';
 import * as attempts from '$lib/server/incidents/attempts-service';
+import * as incidents from '$lib/server/incidents/incidents-service';
 import * as entries from '$lib/server/incidents/entries-service';
 import * as runbooks from '$lib/server/runbooks/runbooks-service';
+import { readSide } from '../../../fixtures/compare';
 import { withDatabase } from '../../../fixtures/database';
 import { makeIncident } from '../../../fixtures/factories/incident';
 import { makeActor } from '../../../fixtures/factories/person';
-import { spoolFixture } from '../../../fixtures/spool';
+import { spool, spoolFixture } from '../../../fixtures/spool';
 
 withDatabase();
 
@@ -25,6 +27,23 @@ async function start(actor: Actor, number: number, input: AttemptInput): Promise
 async function attachPlan(actor: Actor, number: number): Promise<number> {
 	const attached = await evidence.attach(actor, number, [await spoolFixture('plan.json')]);
 	return (attached.ok ? attached.value[0]?.id : undefined) ?? 0;
+}
+
+const PAIR = 'statistics-taken-swap-the-build-side';
+
+/** The plans of a real pair; the one after is named by an attempt only when the test does so. */
+async function attachPair(actor: Actor, number: number): Promise<{ before: number; after: number }> {
+	const attached = await evidence.attach(actor, number, [
+		await spool('before.json', readSide(PAIR, 'before')),
+		await spool('after.json', readSide(PAIR, 'after'))
+	]);
+	const [before, after] = attached.ok ? attached.value : [];
+	return { before: before?.id ?? 0, after: after?.id ?? 0 };
+}
+
+async function symptomsOf(actor: Actor, number: number): Promise<string[]> {
+	const read = await incidents.read(actor, number);
+	return read.ok ? read.value.symptoms.toSorted() : [];
 }
 
 async function logOf(actor: Actor, number: number): Promise<string[]> {
@@ -66,6 +85,17 @@ describe('start', () => {
 		const foreign = await attachPlan(actor, await makeIncident());
 		const refused = await attempts.start(actor, await makeIncident(), { title: 'Analyze', before: foreign });
 		expect(refused).toMatchObject({ problem: { code: 'invalid', errors: [{ field: 'before' }] } });
+	});
+
+	it('takes the newest plan for before, unless another one or none is named', async () => {
+		const actor = await makeActor('responder');
+		const number = await makeIncident();
+		expect((await start(actor, number, { title: 'One' })).before).toBeNull();
+		const { before, after } = await attachPair(actor, number);
+		await evidence.attach(actor, number, [await spool('night.txt', 'The batch was late.')]);
+		expect((await start(actor, number, { title: 'Two' })).before).toBe(after);
+		expect((await start(actor, number, { title: 'Three', before })).before).toBe(before);
+		expect((await start(actor, number, { title: 'Four', before: null })).before).toBeNull();
 	});
 
 	it("takes over the runbook's title, revision and steps, and says so in the log", async () => {
@@ -140,6 +170,68 @@ describe('update', () => {
 		});
 		expect(ended.ok && ended.value.endedAt).toMatch(/Z$/);
 		expect((await logOf(actor, number)).at(-1)).toBe('attempt: Analyze port\\_call: it worked.');
+	});
+
+	it('holds no comparison while one side is missing or no plan', async () => {
+		const actor = await makeActor('responder');
+		const number = await makeIncident();
+		const { before } = await attachPair(actor, number);
+		const { id, comparison } = await start(actor, number, { title: 'Analyze invoice_line', before });
+		expect(comparison).toBeNull();
+		const attached = await evidence.attach(actor, number, [await spool('night.txt', 'It was quick again.')]);
+		const text = (attached.ok ? attached.value[0]?.id : undefined) ?? 0;
+		expect(await attempts.update(actor, number, id, 1, { after: text })).toMatchObject({
+			value: { after: text, comparison: null }
+		});
+	});
+
+	it('compares the plans before and after, wherever the attempt is read', async () => {
+		const actor = await makeActor('responder');
+		const number = await makeIncident();
+		const { before, after } = await attachPair(actor, number);
+		const { id } = await start(actor, number, { title: 'Analyze invoice_line', before });
+		const updated = await attempts.update(actor, number, id, 1, { after });
+		const comparison = {
+			summary: expect.stringMatching(/^Time fell from 666 to 388 ms\. The estimate is right now/),
+			symptomsGone: ['row-underestimate', 'sort-spill'],
+			symptomsNew: []
+		};
+		expect(updated).toMatchObject({ value: { comparison } });
+		expect(await attempts.list(actor, number)).toMatchObject({ value: { items: [{ comparison }] } });
+		expect(await incidents.read(actor, number)).toMatchObject({ value: { attempts: [{ comparison }] } });
+		expect(await attempts.update(actor, number, id, 1, { note: 'late' })).toMatchObject({
+			problem: { code: 'stale', current: { comparison } }
+		});
+	});
+
+	it('does not count what the plan after shows as symptoms of the incident', async () => {
+		const actor = await makeActor('responder');
+		const number = await makeIncident();
+		const attached = await evidence.attach(actor, number, [
+			await spool('after.json', readSide(PAIR, 'after'))
+		]);
+		const after = (attached.ok ? attached.value[0]?.id : undefined) ?? 0;
+		const { id } = await start(actor, number, { title: 'Analyze invoice_line' });
+		expect(await symptomsOf(actor, number)).toEqual(['hash-spill']);
+		await attempts.update(actor, number, id, 1, { after });
+		expect(await symptomsOf(actor, number)).toEqual([]);
+		await evidence.attach(actor, number, [await spoolFixture('plan.json')]);
+		const withFault = await symptomsOf(actor, number);
+		expect(withFault.length).toBeGreaterThan(0);
+		await attempts.update(actor, number, id, 2, { after: null });
+		expect(await symptomsOf(actor, number)).toEqual([...new Set([...withFault, 'hash-spill'])].toSorted());
+	});
+
+	it('draws what resembles the incident without the plan after', async () => {
+		const actor = await makeActor('responder');
+		const number = await makeIncident();
+		const { after } = await attachPair(actor, number);
+		const { id } = await start(actor, number, { title: 'Analyze invoice_line' });
+		const indexed = () =>
+			select('SELECT readingIds FROM precedentProfiles WHERE incidentNumber = :number', { number });
+		const [before] = await indexed();
+		await attempts.update(actor, number, id, 1, { after });
+		expect((await indexed())[0]).not.toEqual(before);
 	});
 
 	it('counts towards the record of the runbook', async () => {

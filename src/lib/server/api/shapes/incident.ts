@@ -11,7 +11,7 @@ import {
 } from '$lib/domain/incident/incident';
 import type { Person } from '$lib/domain/person/person';
 import { SYMPTOM_IDS } from '$lib/domain/symptom/symptom';
-import { readingShape } from './reading';
+import { comparisonShape, readingShape } from './reading';
 import { id, shapeOf, time } from './shape';
 
 const text = z.string().nullable();
@@ -42,7 +42,9 @@ export const evidenceShape = shapeOf<Evidence>()(
 		sha256: z
 			.string()
 			.regex(/^([0-9a-f]{64})?$/)
-			.describe('Of the masked bytes; empty while the state is "reading".'),
+			.describe(
+				'Of the masked bytes; empty while the state is "reading", and once the file is no longer kept.'
+			),
 		name: z.string(),
 		bytes: z.number(),
 		kind: z.enum(['plan', 'log', 'picture', 'other']),
@@ -77,7 +79,9 @@ export const attemptShape = shapeOf<Attempt>()(
 		note: text,
 		before: id.nullable().describe('Id of evidence.'),
 		after: id.nullable().describe('Id of evidence.'),
-		comparison: z.null(),
+		comparison: comparisonShape
+			.nullable()
+			.describe('null while before or after is missing or holds no plan.'),
 		revision: id
 	})
 );
