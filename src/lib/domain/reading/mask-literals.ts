@@ -182,8 +182,9 @@ class Masker {
 	private takeOperator(mark: string, start: number): void {
 		const sign = (mark === '-' || mark === '+') && this.before === 'operator';
 		if (!sign) this.lists.spoil();
+		const first = this.signAt >= 0 ? this.signAt : start;
 		this.settle('operator');
-		if (sign) this.signAt = start;
+		if (sign) this.signAt = first;
 	}
 }
 

@@ -53,6 +53,19 @@ function maskNamed(_all: string, name: string, value: string): string {
 	return `${name}${quote}${MASKED}${quote}`;
 }
 
+const PASSES = 6;
+
+function applyRules(text: string): string {
+	let masked = text;
+	for (const [pattern, replacement] of RULES) {
+		masked =
+			typeof replacement === 'string'
+				? masked.replace(pattern, replacement)
+				: masked.replace(pattern, replacement);
+	}
+	return masked;
+}
+
 /**
  * Likely secrets become `[masked]`: passwords in connection strings and settings, tokens, private keys, e-mail and IP
  * addresses. A guess by shape (common practice, no source): what it can't see must not be pasted.
@@ -60,11 +73,11 @@ function maskNamed(_all: string, name: string, value: string): string {
 export function maskSecrets(text: string): string {
 	if (!SUSPECT.test(text)) return text;
 	let masked = text;
-	for (const [pattern, replacement] of RULES) {
-		masked =
-			typeof replacement === 'string'
-				? masked.replace(pattern, replacement)
-				: masked.replace(pattern, replacement);
+	// What one rule takes away may lay bare the shape that another looks for.
+	for (let pass = 0; pass < PASSES; pass++) {
+		const next = applyRules(masked);
+		if (next === masked) break;
+		masked = next;
 	}
 	return masked;
 }

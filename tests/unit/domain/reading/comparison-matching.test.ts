@@ -4,7 +4,7 @@ import { chooseReadings, choosePlans } from '$lib/domain/reading/comparison/choo
 import { matchOperators } from '$lib/domain/reading/comparison/match-operators';
 import { orderCondition } from '$lib/domain/reading/comparison/operator-meaning';
 import type { Operator, OperatorKind } from '$lib/domain/reading/operator';
-import { readOne } from '../../../fixtures/evidence';
+import { readOne } from '../../../fixtures/evidence-files';
 import { makeOperator } from '../../../fixtures/factories/reading';
 
 interface Sketch {

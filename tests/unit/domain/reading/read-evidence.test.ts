@@ -2,7 +2,14 @@ import { readFileSync } from 'node:fs';
 import { describe, expect, test } from 'vitest';
 import { readEvidence } from '$lib/domain/reading/read-evidence';
 import { BOUNDS } from '$lib/domain/reading/bounds';
-import { evidenceOf, FIXTURE_FORMATS, inPieces, read, readOne, shapeOf } from '../../../fixtures/evidence';
+import {
+	evidenceOf,
+	FIXTURE_FORMATS,
+	inPieces,
+	read,
+	readOne,
+	shapeOf
+} from '../../../fixtures/evidence-files';
 
 const PLAN =
 	"Seq Scan on crate c  (cost=0.00..9.10 rows=5 width=8) (actual time=0.010..0.200 rows=7 loops=2)\n  Filter: (state = 'open'::text)\n  Rows Removed by Filter: 3\n";

@@ -8,7 +8,7 @@ import {
 	read,
 	shapeOf,
 	type EvidenceFixture
-} from '../../../../fixtures/evidence';
+} from '../../../../fixtures/evidence-files';
 
 /** One case comes from separate runs: times, and what workers shared out among them, differ a little. */
 function comparable(operator: Operator, parallel: boolean): unknown {

@@ -1,7 +1,7 @@
 import { readFileSync } from 'node:fs';
 import { describe, expect, test } from 'vitest';
 import { readEvidenceWithHints } from '$lib/domain/reading/read-evidence';
-import { evidenceOf, expectedOf, inPieces, mask, read, readOne } from '../../../../fixtures/evidence';
+import { evidenceOf, expectedOf, inPieces, mask, read, readOne } from '../../../../fixtures/evidence-files';
 
 const FILE = 'temporary file: path "base/pgsql_tmp/pgsql_tmp4711.0", size 1000';
 const at = '2026-03-01 02:00:00.123 UTC';

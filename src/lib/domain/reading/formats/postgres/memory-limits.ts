@@ -5,6 +5,9 @@ const WORK_MEM_DEFAULT_KB = 4096;
 /** PostgreSQL 15 release notes: hash_mem_multiplier 2.0 by default; 1.0 before. */
 const HASH_MEM_MULTIPLIER_DEFAULT = 2;
 
+/** The largest value that the server takes for work_mem (guc_tables.c, MAX_KILOBYTES). */
+const MOST_KB = 2_147_483_647;
+
 const PLAIN = new Set([
 	'sort',
 	'incremental-sort',
@@ -48,7 +51,8 @@ export function memorySettingKb(text: string): number | null {
 	const match = /^\s*(\d+(?:\.\d+)?)\s*(B|kB|MB|GB|TB)?\s*$/i.exec(text);
 	if (match === null) return null;
 	const units: Record<string, number> = { b: 1 / 1024, kb: 1, mb: 1024, gb: 1024 ** 2, tb: 1024 ** 3 };
-	return Math.round(Number(match[1]) * (units[(match[2] ?? 'kB').toLowerCase()] ?? 1));
+	const kb = Math.round(Number(match[1]) * (units[(match[2] ?? 'kB').toLowerCase()] ?? 1));
+	return kb <= MOST_KB ? kb : null;
 }
 
 function multiplierOf(
@@ -58,7 +62,8 @@ function multiplierOf(
 	newestMajor: number | null
 ): number {
 	const set = Number(settings['hash_mem_multiplier']);
-	if (set >= 1) return set;
+	// The server takes 1 to 1000 (manual, "hash_mem_multiplier").
+	if (set >= 1 && set <= 1000) return set;
 	if (newestMajor !== null && newestMajor < 15) return 1;
 	// Before 15 the default was 1.0, and a plan seldom names its version. A hash table that had to split while it
 	// was built stood at its limit when it did, so its peak tells which default it ran under.

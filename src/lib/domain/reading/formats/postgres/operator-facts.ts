@@ -1,6 +1,6 @@
 import { noFacts, type OperatorFacts } from '../../operator';
 import { add, memoryFacts } from './memory-facts';
-import { figure, isRecord, isTrue, records, wordList, words, type PlanNode } from './plan-node';
+import { estimate, figure, isRecord, isTrue, records, wordList, words, type PlanNode } from './plan-node';
 
 const ROLES: Record<string, OperatorFacts['role']> = {
 	Outer: 'outer',
@@ -16,7 +16,7 @@ export function readFacts(node: PlanNode, type: string): OperatorFacts {
 	const facts = noFacts();
 	const loops = figure(node['Actual Loops']);
 	facts.neverExecuted = loops === 0;
-	facts.plannedRowsPerLoop = figure(node['Plan Rows']);
+	facts.plannedRowsPerLoop = estimate(node['Plan Rows']);
 	facts.actualRowsPerLoop = loops === 0 ? null : figure(node['Actual Rows']);
 	facts.joinType = words(node['Join Type'])?.toLowerCase().replace(' ', '-') ?? null;
 	facts.strategy = words(node['Strategy'])?.toLowerCase() ?? null;

@@ -12,12 +12,21 @@ export function isRecord(value: unknown): value is PlanNode {
 	return typeof value === 'object' && value !== null && !Array.isArray(value);
 }
 
-/** A figure at least 0, also where it is written as text; null where there is none. */
+/** A figure from 0 up that a count can reach, also where it is written as text; null where there is none. */
 export function figure(value: unknown): number | null {
-	if (typeof value === 'number') return value >= 0 && value <= Number.MAX_VALUE ? value : null;
+	return upTo(Number.MAX_SAFE_INTEGER, value);
+}
+
+/** The planner's guesses go further than any count: it stops at 1e100 rows (costsize.c, MAXIMUM_ROWCOUNT). */
+export function estimate(value: unknown): number | null {
+	return upTo(1e100, value);
+}
+
+function upTo(most: number, value: unknown): number | null {
+	if (typeof value === 'number') return value >= 0 && value <= most ? value : null;
 	if (typeof value !== 'string' || value.trim() === '') return null;
 	const number = Number(value);
-	return number >= 0 && number <= Number.MAX_VALUE ? number : null;
+	return number >= 0 && number <= most ? number : null;
 }
 
 /** Text that is not empty; null where there is none. */

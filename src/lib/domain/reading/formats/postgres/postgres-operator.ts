@@ -90,7 +90,9 @@ function toOperator(node: PlanNode, path: string): PlanOperator {
 
 /** Binary fractions of sums such as 0.1 x 3 are rounded away; a total has no digit below a millionth. */
 function times(perLoop: number | null, loops: number): number | null {
-	return perLoop === null ? null : Math.round(perLoop * loops * 1e6) / 1e6;
+	if (perLoop === null) return null;
+	const total = perLoop * loops;
+	return total < 1e9 ? Math.round(total * 1e6) / 1e6 : total;
 }
 
 /** Actual / expected rows of one loop, both at least 1 (Moerkotte et al., q-error). */
