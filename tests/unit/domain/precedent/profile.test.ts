@@ -43,10 +43,9 @@ describe('profileEvidence', () => {
 	});
 
 	it('counts one plan saved in several forms once', () => {
-		const reading = makeOverflowingReading();
-		expect(profileEvidence([reading, { ...reading, format: 'postgres-text' }])).toEqual(
-			profileEvidence([reading])
-		);
+		const asJson = { ...makeOverflowingReading(), format: 'postgres-json' as const };
+		const asText = { ...makeOverflowingReading(), format: 'postgres-text' as const };
+		expect(profileEvidence([asJson, asText])).toEqual(profileEvidence([asJson]));
 	});
 
 	it('keeps of one symptom at several operators the heaviest', () => {
