@@ -45,7 +45,7 @@ const MAY_IMPORT: Record<Part, readonly Part[]> = {
 };
 
 /** Leaf libraries that the domain may use: they compute, and know nothing of a platform. */
-const DOMAIN_LIBRARIES = ['zod', 'saxes', 'hash-wasm', 'yaml', 'libpg-query', 'marked'];
+const DOMAIN_LIBRARIES = ['zod', 'saxes', 'hash-wasm', 'yaml', 'libpg-query', 'marked', 'diff'];
 
 function partOf(path: string): Part | null {
 	if (path.startsWith('/src/lib/domain/')) return 'domain';

@@ -2,6 +2,7 @@ import type { Caution } from '../caution/caution';
 import type { Person } from '../person/person';
 import type { Engine } from '../reading/reading';
 import type { SymptomId } from '../symptom/symptom';
+import type { DraftState } from './review';
 
 export const RUNBOOK_STATES = ['draft', 'in-review', 'published', 'retired'] as const;
 export type RunbookState = (typeof RUNBOOK_STATES)[number];
@@ -45,9 +46,11 @@ export interface RunbookSummary {
 	record: RunbookRecord;
 	/** The highest caution level of its statements. */
 	level: 0 | 1 | 2 | 3;
+	/** A newer text than the published one; null: there is none. */
+	draft: { revision: number; state: DraftState } | null;
 }
 
-export interface Runbook extends Omit<RunbookSummary, 'level'> {
+export interface Runbook extends Omit<RunbookSummary, 'level' | 'draft'> {
 	/** Markdown. */
 	body: string;
 	steps: (Omit<Step, 'body' | 'sql' | 'caution'> & { statements: Caution[] })[];

@@ -1,6 +1,7 @@
 import type { Caution } from '$lib/domain/caution/caution';
 import { readBody } from '$lib/domain/runbook/parse-runbook';
-import { highestLevel } from '$lib/domain/runbook/publish-gate';
+import { highestLevel, type WeighedStep } from '$lib/domain/runbook/publish-gate';
+import { workStateOf, type Standing } from '$lib/domain/runbook/review';
 import type { Runbook, RunbookSummary, StepKind } from '$lib/domain/runbook/runbook';
 import { render } from '../markdown/render';
 import type { StoredRunbook } from './runbook-store';
@@ -17,19 +18,28 @@ export interface StepPage {
 	statements: Caution[];
 }
 
-function weigh(stored: StoredRunbook) {
+/** The steps of a stored text with what their statements do. */
+export function weigh(stored: StoredRunbook) {
 	// The folder's database may change under tests and restores: the text itself belongs to the key.
 	return weighRunbook(`${stored.slug} ${stored.revision} ${stored.engines.join()} ${stored.body}`, stored);
 }
 
-function common(stored: StoredRunbook): Omit<RunbookSummary, 'level'> {
-	const { id: _id, body: _body, ...summary } = stored;
-	return summary;
+function common(stored: StoredRunbook): Omit<RunbookSummary, 'level' | 'draft'> {
+	const { slug, title, summary, engines, symptoms, reviewEveryDays, state, revision } = stored;
+	const { owner, reviewer, reviewDue, record } = stored;
+	return {
+		...{ slug, title, summary, engines, symptoms, reviewEveryDays, state, revision },
+		...{ owner, reviewer, reviewDue, record }
+	};
+}
+
+function draftOf({ draftState, newestRevision }: StoredRunbook): RunbookSummary['draft'] {
+	return draftState === null ? null : { revision: newestRevision, state: draftState };
 }
 
 /** What a list shows of a runbook. */
 export async function toSummary(stored: StoredRunbook): Promise<RunbookSummary> {
-	return { ...common(stored), level: highestLevel(await weigh(stored)) };
+	return { ...common(stored), level: highestLevel(await weigh(stored)), draft: draftOf(stored) };
 }
 
 /** The whole runbook with the caution of every statement (API: Runbook). */
@@ -47,12 +57,31 @@ export async function toRunbook(stored: StoredRunbook): Promise<Runbook> {
 	};
 }
 
+/** The whole runbook with its newest text, in that text's own state: what whoever writes or reviews it works on. */
+export function toWork(stored: StoredRunbook): Promise<Runbook> {
+	return toRunbook({ ...stored, state: workStateOf(standingOf(stored)) });
+}
+
+/** Where a stored runbook stands. */
+export function standingOf({ state, draftState }: StoredRunbook): Standing {
+	return { state, draft: draftState };
+}
+
+/** A text as its page draws it, rendered and sanitised. */
+export interface DrawnText {
+	introductionHtml: string;
+	steps: StepPage[];
+	remarksHtml: string;
+}
+
 /** What its page shows besides: the text before and after the steps, and the steps rendered. */
-export async function toPage(
-	stored: StoredRunbook
-): Promise<{ introductionHtml: string; steps: StepPage[]; remarksHtml: string }> {
-	const { introduction, remarks } = readBody(stored.body);
-	const steps = await weigh(stored);
+export async function toPage(stored: StoredRunbook): Promise<DrawnText> {
+	return drawText(stored.body, await weigh(stored));
+}
+
+/** A text with its weighed steps, rendered. */
+export function drawText(body: string, steps: readonly WeighedStep[]): DrawnText {
+	const { introduction, remarks } = readBody(body);
 	return {
 		introductionHtml: render(introduction, { topHeading: 2 }),
 		steps: steps.map(({ step, cautions }) => ({

@@ -1,5 +1,6 @@
 import type { Person } from '$lib/domain/person/person';
 import type { Engine } from '$lib/domain/reading/reading';
+import type { DraftState } from '$lib/domain/runbook/review';
 import type { RunbookRecord, RunbookState } from '$lib/domain/runbook/runbook';
 import type { RunbookFilter } from '$lib/domain/runbook/runbook-filter';
 import type { RunbookInput } from '$lib/domain/runbook/runbook-input';
@@ -28,6 +29,13 @@ export interface StoredRunbook {
 	symptoms: SymptomId[];
 	reviewEveryDays: number;
 	record: RunbookRecord;
+	/** Who wrote the text; null: it came with Catchwater. */
+	authorId: number | null;
+	/** null: nothing was published yet, or it is a draft again. */
+	publishedRevision: number | null;
+	newestRevision: number;
+	/** How far the newest text is beside the published one; null: there is none. */
+	draftState: DraftState | null;
 }
 
 interface Row
@@ -55,7 +63,8 @@ const fromRevision = (revision: string) => `FROM runbooks b
 const FROM = fromRevision('coalesce(b.publishedRevision, b.revision)');
 
 const COLUMNS = `b.id, b.slug, b.state, b.reviewDue, r.revision, r.title, r.summary, r.body, r.engines, r.symptoms,
-	r.reviewEveryDays, b.ownerId, owner.name AS ownerName, b.reviewerId, reviewer.name AS reviewerName,
+	r.reviewEveryDays, r.createdById AS authorId, b.publishedRevision, b.revision AS newestRevision, b.draftState,
+	b.ownerId, owner.name AS ownerName, b.reviewerId, reviewer.name AS reviewerName,
 	coalesce(a.worked, 0) AS worked, coalesce(a.partly, 0) AS partly, coalesce(a.noEffect, 0) AS noEffect,
 	coalesce(a.madeWorse, 0) AS madeWorse`;
 
@@ -90,7 +99,8 @@ function toWhere(filter: Pick<RunbookFilter, 'state' | 'engine' | 'symptom' | 'q
 	const parts = ['1 = 1'];
 	const values: Replacements = {};
 	if (filter.state !== undefined) {
-		parts.push('b.state = :state');
+		// What waits beside a published text is looked for by its own state, too.
+		parts.push('(b.state = :state OR b.draftState = :state)');
 		values.state = filter.state;
 	}
 	if (filter.engine !== undefined) {
@@ -159,6 +169,14 @@ export async function findRunbook(
 	return row === null ? null : toRunbook(row);
 }
 
+/** One runbook with its newest text, published or not; null: there is none of that slug. */
+export async function findNewest(slug: string): Promise<StoredRunbook | null> {
+	const row = await selectOne<Row>(`SELECT ${COLUMNS} ${fromRevision('b.revision')} WHERE b.slug = :slug`, {
+		slug
+	});
+	return row === null ? null : toRunbook(row);
+}
+
 /** What a new runbook is stored with. */
 export interface NewRunbook {
 	slug: string;
@@ -189,10 +207,32 @@ export async function insertRunbook(
 		},
 		{ transaction }
 	);
+	await insertRevision(
+		{ runbookId: created.id, revision: 1, now: meta.now, createdById: meta.createdById, note: null },
+		input,
+		transaction
+	);
+}
+
+/** Where a revision belongs, and who wrote it. */
+export interface NewRevision {
+	runbookId: number;
+	revision: number;
+	now: string;
+	createdById: number | null;
+	note: string | null;
+}
+
+/** Writes one text of a runbook. */
+export async function insertRevision(
+	meta: NewRevision,
+	input: RunbookInput,
+	transaction: Transaction
+): Promise<void> {
 	await RunbookRevisionModel.create(
 		{
-			runbookId: created.id,
-			revision: 1,
+			runbookId: meta.runbookId,
+			revision: meta.revision,
 			title: input.title,
 			summary: input.summary,
 			body: input.body,
@@ -200,10 +240,27 @@ export async function insertRunbook(
 			symptoms: toJson(input.symptoms),
 			reviewEveryDays: input.reviewEveryDays,
 			createdAt: meta.now,
-			createdById: meta.createdById
+			createdById: meta.createdById,
+			note: meta.note
 		},
 		{ transaction }
 	);
+}
+
+/** Where a runbook stands after a move or an edit. */
+export interface RunbookPlace {
+	state: RunbookState;
+	draftState: DraftState | null;
+	revision: number;
+	publishedRevision: number | null;
+	reviewerId: number | null;
+	reviewDue: string | null;
+	updatedAt: string;
+}
+
+/** Writes where a runbook stands now. */
+export async function updatePlace(id: number, place: RunbookPlace, transaction: Transaction): Promise<void> {
+	await RunbookModel.update(place, { where: { id }, transaction });
 }
 
 /** Names who looks after a runbook and who reads it against the manual. */

@@ -1,7 +1,7 @@
 import type { Page } from '$lib/domain/page';
 import { can } from '$lib/domain/person/can';
 import type { Actor } from '$lib/domain/person/person';
-import { fail, ok, type Outcome } from '$lib/domain/problem';
+import { ok, type Outcome } from '$lib/domain/problem';
 import type { Engine } from '$lib/domain/reading/reading';
 import { wilsonInterval, triedOf } from '$lib/domain/runbook/record';
 import type { Runbook, RunbookSummary } from '$lib/domain/runbook/runbook';
@@ -9,16 +9,18 @@ import type { RunbookFilter } from '$lib/domain/runbook/runbook-filter';
 import type { SymptomId } from '$lib/domain/symptom/symptom';
 import { cutPage, readCursor } from '../api/cursor';
 import { toPage, toRunbook, toSummary, type StepPage } from './describe-runbook';
+import { needsReader, noRunbook } from './refusals';
 import { listRunbookAttempts, type RunbookAttempt } from './runbook-attempts';
 import { countRunbooks, findRunbook, listForSymptoms, listRunbooks } from './runbook-store';
 
 export { adoptContent } from './adopt-content';
+export { create, update } from './edit-runbook';
+export { publish, retire, review } from './review-runbook';
+export { compare, revision, revisions } from './runbook-history';
+export { preview, readForEdit, readWork, type RunbookPreview, type RunbookWork } from './runbook-work';
 
 const LIST = 'runbooks';
 const PAGE_SIZE = 50;
-
-const needsReader = () => fail('forbidden', 'Reading runbooks takes a reader.');
-const noRunbook = (slug: string) => fail('not_found', `There is no runbook ${slug}.`);
 
 /** One page of the runbooks that a filter leaves, by title, with how many there are in all. */
 export async function list(

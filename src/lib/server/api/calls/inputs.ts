@@ -8,6 +8,7 @@ import {
 	incidentInput,
 	incidentPatch
 } from '$lib/domain/incident/incident-input';
+import { reviewInput, runbookInput, runbookPatch } from '$lib/domain/runbook/runbook-input';
 import { sizingInput } from '$lib/domain/sizing/sizing';
 
 /** What clients send, each named once in the document. */
@@ -19,5 +20,8 @@ export const INPUTS: ReadonlyMap<string, z.ZodType> = new Map<string, z.ZodType>
 	['AttemptInput', attemptInput],
 	['AttemptPatch', attemptPatch],
 	['SizingInput', sizingInput],
-	['CautionInput', cautionInput]
+	['CautionInput', cautionInput],
+	['RunbookInput', runbookInput],
+	['RunbookPatch', runbookPatch],
+	['ReviewInput', reviewInput]
 ]);

@@ -1,6 +1,9 @@
 import { z } from 'zod';
 import type { Caution } from '$lib/domain/caution/caution';
 import { ENGINES } from '$lib/domain/reading/reading';
+import type { RunbookComparison } from '$lib/domain/runbook/compare-revisions';
+import { REVIEW_ACTIONS } from '$lib/domain/runbook/review';
+import type { RevisionSummary, RunbookRevision } from '$lib/domain/runbook/revision';
 import { RUNBOOK_STATES, STEP_KINDS, type Runbook, type RunbookSummary } from '$lib/domain/runbook/runbook';
 import { SYMPTOM_IDS } from '$lib/domain/symptom/symptom';
 import { personShape } from './incident';
@@ -51,7 +54,16 @@ const common = z.object({
 });
 
 /** A runbook in a list. */
-export const runbookSummaryShape = shapeOf<RunbookSummary>()('RunbookSummary', common.extend({ level }));
+export const runbookSummaryShape = shapeOf<RunbookSummary>()(
+	'RunbookSummary',
+	common.extend({
+		level,
+		draft: z
+			.object({ revision: z.int().positive(), state: z.enum(['draft', 'in-review']) })
+			.nullable()
+			.describe('A newer text than the published one.')
+	})
+);
 
 /** The whole runbook. */
 export const runbookShape = shapeOf<Runbook>()(
@@ -66,5 +78,67 @@ export const runbookShape = shapeOf<Runbook>()(
 				statements: z.array(cautionShape)
 			})
 		)
+	})
+);
+
+const event = z.object({
+	action: z.enum(REVIEW_ACTIONS),
+	by: personShape.nullable(),
+	at: z.string(),
+	note: z.string().nullable()
+});
+
+const revisionCommon = z.object({
+	revision: z.int().positive(),
+	title: z.string(),
+	state: z.enum(RUNBOOK_STATES).nullable().describe('null: a later revision took its place.'),
+	createdAt: z.string(),
+	createdBy: personShape.nullable(),
+	note: z.string().nullable().describe('What its author said of the change.'),
+	events: z.array(event).describe('What was done with it, earliest first.')
+});
+
+/** A revision in the history. */
+export const revisionSummaryShape = shapeOf<RevisionSummary>()('RevisionSummary', revisionCommon);
+
+/** A revision with its text. */
+export const revisionShape = shapeOf<RunbookRevision>()(
+	'RunbookRevision',
+	revisionCommon.extend({
+		slug: z.string(),
+		summary: z.string(),
+		body: z.string().describe('Markdown.'),
+		engines: z.array(z.enum(ENGINES)),
+		symptoms: z.array(z.enum(SYMPTOM_IDS)),
+		reviewEveryDays: z.number()
+	})
+);
+
+const parts = z.array(z.object({ text: z.string(), change: z.enum(['same', 'added', 'removed']) }));
+const weighedStatement = z.object({ sql: z.string(), level }).nullable();
+
+/** What is different between two revisions. */
+export const runbookComparisonShape = shapeOf<RunbookComparison>()(
+	'RunbookComparison',
+	z.object({
+		slug: z.string(),
+		from: z.int().positive(),
+		to: z.int().positive(),
+		cautions: z
+			.array(
+				z.object({
+					step: z.number(),
+					title: z.string(),
+					before: weighedStatement,
+					after: weighedStatement
+				})
+			)
+			.describe(
+				'Statements whose caution differs: changed levels first, then new ones, then those that are gone.'
+			),
+		fields: z.array(
+			z.object({ field: z.enum(['title', 'summary', 'engines', 'symptoms', 'reviewEveryDays']), parts })
+		),
+		body: parts.describe('The text by word; all parts together hold both texts.')
 	})
 );
