@@ -64,15 +64,22 @@ export interface NamedChange {
 	changes: string[];
 }
 
-/** The operators of a comparison at which something changed, named from the readings that were compared. */
-export function nameChanges(comparison: Comparison, before: Reading, after: Reading): NamedChange[] {
+/** A comparison as it is shown: only the operators at which something changed, each with its name. */
+export interface NamedComparison extends Omit<Comparison, 'operators'> {
+	changes: NamedChange[];
+}
+
+/** A comparison with the names of its changed operators, from the readings that were compared. */
+export function nameComparison(comparison: Comparison, before: Reading, after: Reading): NamedComparison {
+	const { operators, ...figures } = comparison;
 	const [old, now] = [namesByPath(before), namesByPath(after)];
-	return comparison.operators
-		.filter(({ changes }) => changes.length > 0)
+	const changes = operators
+		.filter((change) => change.changes.length > 0)
 		.map((change) => ({
 			name: now.get(change.after ?? '') ?? old.get(change.before ?? '') ?? '',
 			...change
 		}));
+	return { ...figures, changes };
 }
 
 function namesByPath({ plan }: Reading): Map<string, string> {

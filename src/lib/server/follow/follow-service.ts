@@ -5,6 +5,7 @@ import type { Actor } from '$lib/domain/person/person';
 import { fail, ok, type Outcome } from '$lib/domain/problem';
 import { suggestBlanks } from './suggest-blanks';
 import * as attempts from '../incidents/attempts-service';
+import { nameAttempt } from '../incidents/compare-attempts';
 import * as entries from '../incidents/entries-service';
 import * as incidents from '../incidents/incidents-service';
 import * as people from '../people/people-service';
@@ -60,7 +61,9 @@ export async function read(actor: Actor, place: Place, wanted: number | null) {
 	const current = page.steps.find((step) => step.number === (wanted ?? next)) ?? null;
 	const { slug, state } = page.runbook;
 	return ok({
-		attempt,
+		// The comparison goes along as it is shown: two plans may have thousands of operators.
+		attempt: { ...attempt, comparison: null },
+		comparison: nameAttempt(attempt, evidence),
 		incident: { number, title, revision },
 		evidence: evidence.map(({ id, name }) => ({ id, name })),
 		runbook: { slug, title: page.runbook.title, state },

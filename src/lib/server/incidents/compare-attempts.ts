@@ -1,11 +1,11 @@
 import type { Attempt } from '$lib/domain/incident/attempt';
 import type { Evidence } from '$lib/domain/incident/incident';
-import { compareReadings } from '$lib/domain/reading/compare-readings';
+import { compareReadings, nameComparison, type NamedComparison } from '$lib/domain/reading/compare-readings';
 import { choosePlans, type ReadingPair } from '$lib/domain/reading/comparison/choose-readings';
 import { readEvidenceById } from '../evidence/evidence-store';
 
 /** The plans that an attempt is judged by, out of the evidence; null while one side is missing or holds no plan. */
-export function findPlans(
+function findPlans(
 	{ before, after }: Pick<Attempt, 'before' | 'after'>,
 	evidence: readonly Evidence[]
 ): ReadingPair | null {
@@ -32,4 +32,12 @@ export async function withComparisons(
 	);
 	const known = evidence ?? (await readEvidenceById([...new Set(named)]));
 	return attempts.map((attempt) => compare(attempt, known));
+}
+
+/** The comparison of an attempt as it is shown, with the names of what changed; null: there is none. */
+export function nameAttempt(attempt: Attempt, evidence: readonly Evidence[]): NamedComparison | null {
+	const plans = findPlans(attempt, evidence);
+	return plans === null || attempt.comparison === null
+		? null
+		: nameComparison(attempt.comparison, plans.before, plans.after);
 }

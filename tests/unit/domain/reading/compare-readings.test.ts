@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { compareReadings, nameChanges, type Comparison } from '$lib/domain/reading/compare-readings';
+import { compareReadings, nameComparison, type Comparison } from '$lib/domain/reading/compare-readings';
 import { walkOperators } from '$lib/domain/reading/operator';
 import type { Reading } from '$lib/domain/reading/reading';
 import { COMPARED_CASES as CASES, readSide } from '../../../fixtures/compare';
@@ -129,7 +129,7 @@ describe('compareReadings', () => {
 	it('matches a join that is done in another way', async () => {
 		const { before, after } = await readPair('nested-loop-becomes-hash-join');
 		const comparison = compareReadings(before, after);
-		expect(nameChanges(comparison, before, after)).toContainEqual(
+		expect(nameComparison(comparison, before, after).changes).toContainEqual(
 			expect.objectContaining({
 				before: '0.0.0',
 				name: 'hash join on container_id',

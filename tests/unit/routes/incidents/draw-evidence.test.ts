@@ -40,6 +40,18 @@ describe('drawEvidence', () => {
 		expect(drawEvidence(evidence, '9.9').main?.key).toBe('2.0');
 	});
 
+	it('leaves evidence after a remedy out of what the incident was, and shows it when asked for', () => {
+		const left = makeReading({
+			symptoms: [{ id: 'cold-reads', operator: null, weight: 1, figures: {}, summary: '' }]
+		});
+		const evidence = [makeEvidence(1, [log]), makeEvidence(2, [makeOverflowingReading(), left])];
+		const drawn = drawEvidence(evidence, null, [2]);
+		expect(drawn.main?.key).toBe('1.0');
+		expect(drawn.otherSymptoms).toEqual([]);
+		expect(drawn.list.map(({ id }) => id)).toEqual([1, 2]);
+		expect(drawEvidence(evidence, '2.0', [2]).main?.key).toBe('2.0');
+	});
+
 	it('names each symptom once, those of other pieces with where they were read', () => {
 		const other = makeReading({
 			name: 'other.txt',

@@ -5,6 +5,7 @@ import type { Actor } from '$lib/domain/person/person';
 import { ENGINES, type Engine } from '$lib/domain/reading/reading';
 import { requireActor } from '$lib/server/http/guard';
 import { unwrap } from '$lib/server/http/respond';
+import { nameAttempt } from '$lib/server/incidents/compare-attempts';
 import * as incidents from '$lib/server/incidents/incidents-service';
 import { render } from '$lib/server/markdown/render';
 import * as people from '$lib/server/people/people-service';
@@ -21,7 +22,7 @@ const PRECEDENTS = 5;
 
 /** Texts of Markdown beside their HTML: the text is what an edit begins with. */
 function drawTexts(incident: Incident) {
-	const { evidence: _evidence, entries, attempts, ...facts } = incident;
+	const { evidence, entries, attempts, ...facts } = incident;
 	return {
 		...facts,
 		narrativeHtml: render(incident.narrative),
@@ -29,6 +30,7 @@ function drawTexts(incident: Incident) {
 		entries: entries.map((entry) => ({ ...entry, html: render(entry.text, { topHeading: 4 }) })),
 		attempts: attempts.map((attempt) => ({
 			...attempt,
+			comparison: nameAttempt(attempt, evidence),
 			noteHtml: render(attempt.note ?? '', { topHeading: 4 })
 		}))
 	};
@@ -68,7 +70,11 @@ export const load = (async (event) => {
 	]);
 	return {
 		incident: drawTexts(incident),
-		evidence: drawEvidence(incident.evidence, event.url.searchParams.get('reading')),
+		evidence: drawEvidence(
+			incident.evidence,
+			event.url.searchParams.get('reading'),
+			incident.attempts.flatMap(({ after }) => after ?? [])
+		),
 		precedents: unwrap(alike),
 		runbooks: unwrap(suited),
 		responders: responders === null ? [] : unwrap(responders),

@@ -34,6 +34,8 @@ export interface DrawnEvidence {
 interface Placed {
 	key: string;
 	reading: Reading;
+	/** It shows how it was after a remedy, not what the incident was. */
+	isAfter: boolean;
 }
 
 /** Most telling first: a trail before symptoms before temporary files; then the heaviest; then the first given. */
@@ -45,7 +47,10 @@ function rank({ reading }: Placed): number {
 	return reading.kind === 'unknown' ? 0 : 1;
 }
 
-function toListed({ key, reading }: Placed, mainKey: string | undefined): ListedReading {
+function toListed(
+	{ key, reading }: Pick<Placed, 'key' | 'reading'>,
+	mainKey: string | undefined
+): ListedReading {
 	const { kind, engine, engineVersion, symptoms, spills, warnings } = reading;
 	return {
 		key,
@@ -59,14 +64,26 @@ function toListed({ key, reading }: Placed, mainKey: string | undefined): Listed
 	};
 }
 
-/** Chooses the reading that the page is about (or the one asked for by its key), and lists the rest in short. */
-export function drawEvidence(evidence: readonly Evidence[], askedKey: string | null): DrawnEvidence {
+/**
+ * Chooses the reading that the page is about (or the one asked for by its key), and lists the rest in short.
+ * `after`: ids of evidence that shows how it was after a remedy; it speaks for the incident only when asked for.
+ */
+export function drawEvidence(
+	evidence: readonly Evidence[],
+	askedKey: string | null,
+	after: readonly number[] = []
+): DrawnEvidence {
 	const placed = evidence.flatMap(({ id, readings }) =>
-		readings.map((reading, position) => ({ key: `${id}.${position}`, reading }))
+		readings.map((reading, position) => ({
+			key: `${id}.${position}`,
+			reading,
+			isAfter: after.includes(id)
+		}))
 	);
 	const asked = placed.find(({ key }) => key === askedKey);
-	const main = asked ?? placed.toSorted((a, b) => rank(b) - rank(a)).find((one) => rank(one) > 0);
-	const others = placed.filter(({ key }) => key !== main?.key);
+	const ofFault = placed.filter(({ isAfter }) => !isAfter);
+	const main = asked ?? ofFault.toSorted((a, b) => rank(b) - rank(a)).find((one) => rank(one) > 0);
+	const others = ofFault.filter(({ key }) => key !== main?.key);
 	const known = new Set(main?.reading.symptoms.map(({ id }) => id));
 	const otherSymptoms = others.flatMap(({ reading }) =>
 		reading.symptoms.flatMap((symptom) => {
