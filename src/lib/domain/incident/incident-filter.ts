@@ -22,7 +22,7 @@ function repeatable<T extends z.ZodType>(item: T) {
 }
 
 /** Text to be looked up. The database ends a text at a null character. */
-function searchText(most: number) {
+export function searchText(most: number) {
 	return z
 		.string()
 		.trim()
@@ -35,10 +35,10 @@ const dayOrTime = z.union([z.iso.date(), z.iso.datetime({ offset: true })], {
 });
 
 /** The start of a day, or the instant itself; UTC. */
-const periodStart = dayOrTime.transform((text) => new Date(text).toISOString());
+export const periodStart = dayOrTime.transform((text) => new Date(text).toISOString());
 
 /** The last millisecond of a day, or the instant itself; UTC. */
-const periodEnd = dayOrTime.transform((text) =>
+export const periodEnd = dayOrTime.transform((text) =>
 	text.includes('T') ? new Date(text).toISOString() : `${text}T23:59:59.999Z`
 );
 
