@@ -3,6 +3,7 @@ import { config, ConfigError, type Config } from './config';
 import { closeDatabase, openDatabase } from './db/connection';
 import { leaveReadings } from './evidence/late-reading';
 import { recoverEvidence } from './evidence/recover-evidence';
+import { startRetention } from './evidence/retention';
 import { releaseRunningKeys } from './http/idempotency-store';
 import { log } from './log';
 import { startPostman } from './mail/deliver-mail';
@@ -32,10 +33,10 @@ function requireConfig(): Config {
  * Ends what is under way: readings that outlasted their request, and mail that nobody took, are taken up at the next
  * start.
  */
-async function stopServer(stopPostman: () => Promise<void>): Promise<void> {
+async function stopServer(jobs: readonly (() => Promise<void>)[]): Promise<void> {
 	leaveReadings();
 	await resets.settled();
-	await stopPostman();
+	for (const stop of jobs) await stop();
 	await closePool();
 	await closeDatabase();
 }
@@ -58,7 +59,7 @@ export async function startServer(): Promise<void> {
 	startSearch();
 	warmUp();
 	await recoverEvidence();
-	const stopPostman = startPostman();
+	const jobs = [startPostman(), startRetention()];
 	const tidying = setInterval(() => {
 		tidy().catch((error: unknown) => log().error({ err: error }, 'tidying failed'));
 	}, TIDY_EVERY_MS);
@@ -68,6 +69,6 @@ export async function startServer(): Promise<void> {
 	// The adapter's event, after the last answer was sent.
 	process.once('sveltekit:shutdown', () => {
 		clearInterval(tidying);
-		stopServer(stopPostman).catch((error: unknown) => log().error({ err: error }, 'stopping failed'));
+		stopServer(jobs).catch((error: unknown) => log().error({ err: error }, 'stopping failed'));
 	});
 }
