@@ -22,7 +22,7 @@ function repeatable<T extends z.ZodType>(item: T) {
 }
 
 /** Text to be looked up. The database ends a text at a null character. */
-export function searchText(most: number) {
+function searchText(most: number) {
 	return z
 		.string()
 		.trim()

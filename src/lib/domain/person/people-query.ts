@@ -9,3 +9,10 @@ export const peopleQuery = pageQuery.extend({
 	role: z.enum(ROLES, { error: `Give one of ${ROLES.join(', ')}.` }).optional()
 });
 export type PeopleQuery = z.infer<typeof peopleQuery>;
+
+/** Query of the list of tokens. */
+export const tokenQuery = pageQuery.extend({
+	/** Whose; one's own where it is left out. */
+	person: z.number("Give a person's id.").int().positive().optional()
+});
+export type TokenQuery = z.infer<typeof tokenQuery>;

@@ -53,7 +53,8 @@ async function settle(
 	name: KeyName,
 	response: Response,
 	event: RequestEvent,
-	hash: BodyHash
+	hash: BodyHash,
+	toKept: (body: string) => string
 ): Promise<Response> {
 	if (!response.ok) {
 		await releaseKey(name);
@@ -66,7 +67,12 @@ async function settle(
 		const value = response.headers.get(header);
 		if (value !== null) headers[header] = value;
 	}
-	await keepAnswer(name, { bodyHash: hash.finish(), status: response.status, headers, body });
+	await keepAnswer(name, {
+		bodyHash: hash.finish(),
+		status: response.status,
+		headers,
+		body: toKept(body)
+	});
 	return new Response(body, { status: response.status, headers: response.headers });
 }
 
@@ -74,10 +80,12 @@ async function settle(
  * Runs a POST at most once for each Idempotency-Key of a person and address, within 24 h: the same key with
  * the same body gets the first answer again, with another body 422, while the first is under way 409. Only
  * success is kept: after a failure nothing was done, and the key is free. Without the header it just runs.
+ * `toKept` takes out of an answer what may be kept nowhere: a replay comes without it.
  */
 export async function idempotent(
 	event: RequestEvent,
-	run: (event: RequestEvent) => Promise<Response>
+	run: (event: RequestEvent) => Promise<Response>,
+	toKept: (body: string) => string = (body) => body
 ): Promise<Response> {
 	const key = event.request.headers.get('idempotency-key');
 	if (key === null) return run(event);
@@ -98,7 +106,7 @@ export async function idempotent(
 	if (found !== 'taken') return replay(event, found, hash);
 	hashBody(event, hash);
 	try {
-		return await settle(name, await run(event), event, hash);
+		return await settle(name, await run(event), event, hash, toKept);
 	} catch (error) {
 		// Whatever it was, the key must not stay taken by a call that is over.
 		await releaseKey(name);

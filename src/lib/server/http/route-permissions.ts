@@ -25,6 +25,8 @@ export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
 
 	'/(app)': { GET: 'watch.read', actions: { take: 'incident.write' } },
 	'/(app)/account': { GET: 'account.own', POST: 'account.own' },
+	'/(app)/audit': { GET: 'audit.read' },
+	'/(app)/audit/csv': { GET: 'audit.read' },
 	// Draws the error of a page that a role doesn't open; says nothing of any other page.
 	'/(app)/refused': { GET: 'account.own' },
 	'/(app)/gauge': { GET: 'reading.make', POST: 'reading.make' },
@@ -35,14 +37,34 @@ export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
 		actions: { removeEvidence: 'evidence.remove' }
 	},
 	'/(app)/incidents/new': { GET: 'incident.write', POST: 'incident.write' },
+	'/(app)/outbox': { GET: 'mail.read' },
+	'/(app)/outbox/[id]': { GET: 'mail.read' },
+	'/(app)/people': { GET: 'people.manage', POST: 'people.manage' },
+	'/(app)/people/[id]': { GET: 'people.manage', POST: 'people.manage' },
 	'/(app)/runbooks': { GET: 'runbook.read' },
-	'/(app)/runbooks/[slug]': { GET: 'runbook.read', actions: { start: 'attempt.write' } },
+	'/(app)/runbooks/[slug]': {
+		GET: 'runbook.read',
+		actions: {
+			start: 'attempt.write',
+			submit: 'runbook.edit',
+			return: 'runbook.edit',
+			approve: 'runbook.publish',
+			publish: 'runbook.publish',
+			retire: 'runbook.publish'
+		}
+	},
+	'/(app)/runbooks/[slug]/compare': { GET: 'runbook.read' },
+	'/(app)/runbooks/[slug]/edit': { GET: 'runbook.edit', POST: 'runbook.edit' },
 	'/(app)/runbooks/[slug]/follow': { GET: 'attempt.read', POST: 'attempt.write' },
+	'/(app)/runbooks/[slug]/history': { GET: 'runbook.read' },
+	'/(app)/runbooks/new': { GET: 'runbook.draft', POST: 'runbook.draft' },
 	'/(app)/search': { GET: 'search.read' },
+	'/(app)/settings': { GET: 'settings.manage', POST: 'settings.manage' },
 	'/(app)/symptoms': { GET: 'symptom.read' },
 	'/(app)/symptoms/[id]': { GET: 'symptom.read' },
 	'/(app)/theme': { POST: 'account.own' },
 
+	'/api/v1/audit': { GET: 'audit.read' },
 	'/api/v1/cautions': { POST: 'reading.make' },
 	'/api/v1/evidence': { POST: 'evidence.write' },
 	'/api/v1/evidence/[sha256]': { GET: 'evidence.read' },
@@ -56,7 +78,12 @@ export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
 	'/api/v1/incidents/[number]/evidence': { POST: 'evidence.write' },
 	'/api/v1/incidents/[number]/evidence/[id]': { DELETE: 'evidence.remove' },
 	'/api/v1/incidents/[number]/precedents': { GET: 'precedent.read' },
+	'/api/v1/invitations': { GET: 'people.manage', POST: 'people.manage' },
+	'/api/v1/invitations/[id]': { GET: 'people.manage', DELETE: 'people.manage' },
+	'/api/v1/invitations/[id]/resend': { POST: 'people.manage' },
 	'/api/v1/openapi.json': { GET: 'open' },
+	'/api/v1/people': { GET: 'people.manage' },
+	'/api/v1/people/[id]': { GET: 'people.manage', PATCH: 'people.manage' },
 	'/api/v1/precedents': { POST: 'reading.make' },
 	'/api/v1/readings': { POST: 'reading.make' },
 	'/api/v1/readings/compare': { POST: 'reading.make' },
@@ -69,9 +96,12 @@ export const ROUTE_PERMISSIONS: Record<string, RouteAccess> = {
 	'/api/v1/runbooks/[slug]/review': { POST: 'runbook.edit' },
 	'/api/v1/runbooks/[slug]/revisions': { GET: 'runbook.read' },
 	'/api/v1/runbooks/[slug]/revisions/[n]': { GET: 'runbook.read' },
+	'/api/v1/settings': { GET: 'settings.manage', PATCH: 'settings.manage' },
 	'/api/v1/sizing': { POST: 'reading.make' },
 	'/api/v1/symptoms': { GET: 'symptom.read' },
 	'/api/v1/symptoms/[id]': { GET: 'symptom.read' },
+	'/api/v1/tokens': { GET: 'account.own', POST: 'account.own' },
+	'/api/v1/tokens/[id]': { GET: 'account.own', DELETE: 'account.own' },
 	'/api/v1/watch': { GET: 'watch.read' }
 };
 

@@ -57,17 +57,37 @@ export function setLastUsed(id: number, lastUsedAt: string): Promise<unknown> {
 	return write((transaction) => TokenModel.update({ lastUsedAt }, { where: { id }, transaction }));
 }
 
-/** Takes back one token of a person; false where it is not theirs or was taken back before. */
-export async function revokeToken(
+/** One token, without use any more included; null where there is none. */
+export function findTokenById(id: number): Promise<TokenRecord | null> {
+	return selectOne<TokenRecord>(`SELECT ${COLUMNS} FROM tokens WHERE id = :id`, { id });
+}
+
+/** Tokens of a person, newest first, from before an id (null: from the newest). */
+export function listTokenPage(
 	personId: number,
-	id: number,
-	revokedAt: string,
-	transaction: Transaction
-): Promise<boolean> {
-	const [changed] = await TokenModel.update(
-		{ revokedAt },
-		{ where: { id, personId, revokedAt: null }, transaction }
+	beforeId: number | null,
+	limit: number
+): Promise<TokenRecord[]> {
+	return select<TokenRecord>(
+		`SELECT ${COLUMNS} FROM tokens
+		WHERE personId = :personId AND (:beforeId IS NULL OR id < :beforeId)
+		ORDER BY id DESC LIMIT :limit`,
+		{ personId, beforeId, limit }
 	);
+}
+
+/** How many tokens a person has. */
+export async function countTokens(personId: number): Promise<number> {
+	const row = await selectOne<{ total: number }>(
+		'SELECT COUNT(*) AS total FROM tokens WHERE personId = :personId',
+		{ personId }
+	);
+	return row?.total ?? 0;
+}
+
+/** Takes back one token; false where it was taken back before. */
+export async function revokeToken(id: number, revokedAt: string, transaction: Transaction): Promise<boolean> {
+	const [changed] = await TokenModel.update({ revokedAt }, { where: { id, revokedAt: null }, transaction });
 	return changed === 1;
 }
 

@@ -1,7 +1,10 @@
+import type { Page } from '$lib/domain/page';
 import { can, includesRole } from '$lib/domain/person/can';
 import type { Actor, Role } from '$lib/domain/person/person';
+import type { TokenQuery } from '$lib/domain/person/people-query';
 import type { TokenInput } from '$lib/domain/person/person-input';
 import { fail, ok, type Outcome } from '$lib/domain/problem';
+import { cutPage, readCursor } from '../api/cursor';
 import * as audit from '../audit/audit-service';
 import { write } from '../db/transaction';
 import { findById } from '../people/people-store';
@@ -82,14 +85,47 @@ export async function list(actor: Actor): Promise<Outcome<TokenRecord[]>> {
 	return ok(await store.listTokens(actor.personId));
 }
 
-/** Takes back one of one's own tokens, at once. */
+/** A token that the actor may see; another's is not there for them. */
+async function findVisible(actor: Actor, id: number): Promise<Outcome<TokenRecord>> {
+	const token = await store.findTokenById(id);
+	return token && mayManage(actor, token.personId)
+		? ok(token)
+		: fail('not_found', `You have no token ${id}.`);
+}
+
+/** One token: one's own; anybody's for an administrator. */
+export function read(actor: Actor, id: number): Promise<Outcome<TokenRecord>> {
+	return findVisible(actor, id);
+}
+
+/**
+ * A page of tokens, newest first: one's own, or those of a person whom the query names, which takes an
+ * administrator where it is somebody else.
+ */
+export async function listPage(actor: Actor, query: TokenQuery): Promise<Outcome<Page<TokenRecord>>> {
+	const personId = query.person ?? actor.personId;
+	if (personId === null || !mayManage(actor, personId)) {
+		return fail('forbidden', "Only an administrator sees others' tokens.");
+	}
+	const name = `tokens ${personId}`;
+	const after = readCursor(name, query.cursor);
+	if (!after.ok) return after;
+	const [found, total] = await Promise.all([
+		store.listTokenPage(personId, after.value?.id ?? null, query.limit + 1),
+		store.countTokens(personId)
+	]);
+	const { rows, next } = cutPage(found, query.limit, name, ({ id }) => ({ key: id, id }));
+	return ok({ items: rows, next, total });
+}
+
+/** Takes back a token at once: one's own; anybody's for an administrator. */
 export async function revoke(actor: Actor, id: number): Promise<Outcome<null>> {
-	const { personId } = actor;
-	if (!can(actor, 'account.own') || personId === null) return fail('forbidden', 'Only a person has tokens.');
 	return write(async (t) => {
-		const revoked = await store.revokeToken(personId, id, new Date().toISOString(), t);
-		if (!revoked) return fail('not_found', 'You have no such token, or it was taken back before.');
-		await audit.record(actor, 'token.revoke', `token:${id}`, {}, t);
+		const found = await findVisible(actor, id);
+		if (!found.ok) return found;
+		const revoked = await store.revokeToken(id, new Date().toISOString(), t);
+		if (!revoked) return fail('not_found', 'This token was taken back before.');
+		await audit.record(actor, 'token.revoke', `token:${id}`, { person: found.value.personId }, t);
 		return ok(null);
 	});
 }

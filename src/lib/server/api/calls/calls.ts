@@ -2,6 +2,7 @@ import type { Call } from '../call';
 import { EVIDENCE_CALLS } from './evidence-calls';
 import { FINDING_CALLS } from './finding-calls';
 import { INCIDENT_CALLS } from './incident-calls';
+import { PEOPLE_CALLS } from './people-calls';
 import { RUNBOOK_CALLS } from './runbook-calls';
 import { SERVICE_CALLS } from './service-calls';
 import { SYMPTOM_CALLS } from './symptom-calls';
@@ -13,5 +14,6 @@ export const CALLS: readonly Call[] = [
 	...FINDING_CALLS,
 	...INCIDENT_CALLS,
 	...RUNBOOK_CALLS,
-	...SYMPTOM_CALLS
+	...SYMPTOM_CALLS,
+	...PEOPLE_CALLS
 ];

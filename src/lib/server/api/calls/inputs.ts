@@ -8,6 +8,8 @@ import {
 	incidentInput,
 	incidentPatch
 } from '$lib/domain/incident/incident-input';
+import { invitationInput, personPatch, tokenInput } from '$lib/domain/person/person-input';
+import { settingsPatch } from '$lib/domain/settings/settings';
 import { reviewInput, runbookInput, runbookPatch } from '$lib/domain/runbook/runbook-input';
 import { sizingInput } from '$lib/domain/sizing/sizing';
 
@@ -23,5 +25,9 @@ export const INPUTS: ReadonlyMap<string, z.ZodType> = new Map<string, z.ZodType>
 	['CautionInput', cautionInput],
 	['RunbookInput', runbookInput],
 	['RunbookPatch', runbookPatch],
-	['ReviewInput', reviewInput]
+	['ReviewInput', reviewInput],
+	['PersonPatch', personPatch],
+	['InvitationInput', invitationInput],
+	['TokenInput', tokenInput],
+	['SettingsPatch', settingsPatch]
 ]);
