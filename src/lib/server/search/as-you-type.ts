@@ -45,8 +45,8 @@ export class AsYouType {
 		processTerm: (term) => (STOP_WORDS.has(term) ? null : term),
 		searchOptions: {
 			boost: BOOST,
-			prefix: true,
-			fuzzy: (term) => (term.length >= TWO_TYPOS_FROM ? 2 : term.length >= TYPO_FROM ? 1 : 0),
+			// Only the word being typed is unfinished.
+			prefix: (_term, index, terms) => index === terms.length - 1,
 			combineWith: 'AND'
 		}
 	});
@@ -92,17 +92,27 @@ export class AsYouType {
 		if (!this.#index.has(document.id)) this.#index.add(document);
 	}
 
-	/** What meets all the words, best first. */
+	/** What meets all the words, best first; where nothing does, what meets them with a typo or two. */
 	find(words: readonly string[], limit: number): ShortHit[] {
-		return this.#index
-			.search(words.join(' '), { tokenize: (text) => findWords(text).map((word) => word.text) })
-			.slice(0, limit)
-			.map((result) => ({
-				kind: result.kind as ShortHit['kind'],
-				key: String(result.key),
-				score: result.score
-			}));
+		const line = words.join(' ');
+		const exact = this.#index.search(line, { tokenize: cutWords });
+		const found =
+			exact.length > 0 ? exact : this.#index.search(line, { tokenize: cutWords, fuzzy: allowTypos });
+		return found.slice(0, limit).map((result) => ({
+			kind: result.kind as ShortHit['kind'],
+			key: String(result.key),
+			score: result.score
+		}));
 	}
+}
+
+function cutWords(text: string): string[] {
+	return findWords(text).map((word) => word.text);
+}
+
+/** Typos allowed in a word, by its length. */
+function allowTypos(term: string): number {
+	return term.length >= TWO_TYPOS_FROM ? 2 : term.length >= TYPO_FROM ? 1 : 0;
 }
 
 /** One index for each open database; it goes when the database is closed. */
