@@ -2,6 +2,10 @@ import { readFile } from 'node:fs/promises';
 import { suggestTitle } from '$lib/domain/incident/prefill';
 import type { Problem } from '$lib/domain/problem';
 import { sizingInput } from '$lib/domain/sizing/sizing';
+import type { Actor } from '$lib/domain/person/person';
+import { compareReadings, nameComparison } from '$lib/domain/reading/compare-readings';
+import { readPair } from '$lib/server/evidence/compare-once';
+import { requirePair } from '$lib/server/evidence/receive-pair';
 import { receiveUploads } from '$lib/server/evidence/receive-uploads';
 import { removeFromSpool } from '$lib/server/evidence/spool';
 import type { Upload } from '$lib/server/evidence/upload';
@@ -35,22 +39,41 @@ async function readPasted(uploads: readonly Upload[]): Promise<string | null> {
 	return readFile(only.path, 'utf8');
 }
 
+/** An empty file field arrives as a file without bytes. */
+function withBytes(uploads: readonly Upload[] = []): Upload[] {
+	return uploads.filter(({ bytes }) => bytes > 0);
+}
+
+async function readGiven(actor: Actor, uploads: readonly Upload[]) {
+	const given = withBytes(uploads);
+	if (given.length === 0) return failWith(NOTHING_GIVEN, {});
+	const read = await readings.read(actor, given);
+	if (!read.ok) return failWith(read.problem, {});
+	return { readings: read.value, title: suggestTitle(read.value), pasted: await readPasted(given) };
+}
+
+async function compareGiven(actor: Actor, more: Record<string, Upload[]>) {
+	const given = requirePair(withBytes(more.before), withBytes(more.after));
+	if (!given.ok) return failWith(given.problem, {});
+	const pair = await readPair(actor, given.value);
+	if (!pair.ok) return failWith(pair.problem, {});
+	const { before, after } = pair.value;
+	return { compared: nameComparison(compareReadings(before, after), before, after) };
+}
+
 export const actions = {
 	/** For a browser without JavaScript; the others read here themselves. Nothing is stored. */
 	default: async (event) => {
 		const actor = requireActor(event);
-		const received = await receiveUploads(event, { field: 'evidence' });
+		const received = await receiveUploads(event, { field: 'evidence', more: ['before', 'after'] });
 		if (!received.ok) return failWith(received.problem, {});
-		const { uploads } = received.value;
+		const { uploads, more } = received.value;
 		try {
-			// An empty file field arrives as a file without bytes.
-			const given = uploads.filter(({ bytes }) => bytes > 0);
-			if (given.length === 0) return failWith(NOTHING_GIVEN, {});
-			const read = await readings.read(actor, given);
-			if (!read.ok) return failWith(read.problem, {});
-			return { readings: read.value, title: suggestTitle(read.value), pasted: await readPasted(given) };
+			return event.url.searchParams.has('compare')
+				? await compareGiven(actor, more)
+				: await readGiven(actor, uploads);
 		} finally {
-			await removeFromSpool(uploads.map((upload) => upload.path));
+			await removeFromSpool([...uploads, ...Object.values(more).flat()].map((upload) => upload.path));
 		}
 	}
 } satisfies Actions;

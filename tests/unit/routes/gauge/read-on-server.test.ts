@@ -3,6 +3,7 @@ import path from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { database } from '$lib/server/db/connection';
 import { select } from '$lib/server/db/query';
+import { readSide } from '../../../fixtures/compare';
 import { withDatabase } from '../../../fixtures/database';
 import { request } from '../../../fixtures/request';
 
@@ -41,6 +42,39 @@ describe('reading on the server for a browser without JavaScript', () => {
 
 	it('stores nothing, not even in the spool', async () => {
 		await request('POST', '/gauge', { as: 'reader', body: form(PLAN) });
+		expect(await select('SELECT id FROM evidence')).toEqual([]);
+		expect(await readdir(path.join(database().dataDir, 'spool'))).toEqual([]);
+	});
+});
+
+describe('comparing on the server for a browser without JavaScript', () => {
+	const pairForm = (before: string | Buffer, after: string | Buffer): FormData => {
+		const body = new FormData();
+		for (const [name, text] of [
+			['before', before],
+			['after', after]
+		] as const) {
+			body.append(name, String(text));
+			body.append(name, new File([], ''));
+		}
+		return body;
+	};
+	const PAIR = 'statistics-taken-swap-the-build-side';
+
+	it('says at which field something is missing', async () => {
+		const answer = await request('POST', '/gauge?compare', { as: 'reader', body: pairForm(PLAN, ' ') });
+		expect(answer.status).toBe(400);
+		const { data } = await answer.json();
+		expect(Object.keys(data.issues)).toEqual(['after']);
+		expect(await readdir(path.join(database().dataDir, 'spool'))).toEqual([]);
+	});
+
+	it('compares what was pasted, with the names of what changed, and stores nothing', async () => {
+		const body = pairForm(readSide(PAIR, 'before'), readSide(PAIR, 'after'));
+		const answer = await request('POST', '/gauge?compare', { as: 'reader', body });
+		const { compared } = (await answer.json()).data;
+		expect(compared.summary).toMatch(/^Time fell from 666 to 388 ms/);
+		expect(compared.changes.map(({ name }: { name: string }) => name)).toContain('hash join on invoice_no');
 		expect(await select('SELECT id FROM evidence')).toEqual([]);
 		expect(await readdir(path.join(database().dataDir, 'spool'))).toEqual([]);
 	});
