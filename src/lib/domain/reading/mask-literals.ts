@@ -46,19 +46,19 @@ class Masker {
 
 	run(): string {
 		while (this.at < this.sql.length) {
-			if (this.skip(SPACE)) continue;
-			this.takeToken();
+			const code = this.sql.charCodeAt(this.at);
+			if (code === 32 || code === 10 || code === 9) this.at++;
+			else if (!isSpaceLike(code) || !this.skip(SPACE)) this.takeToken(code);
 		}
 		this.copy(this.at);
 		return this.lists.text;
 	}
 
-	private takeToken(): void {
-		const code = this.sql.charCodeAt(this.at);
+	private takeToken(code: number): void {
 		const start = this.at;
 		if (isWordStart(code)) {
-			if (this.skip(STRING_START)) this.takeString(start);
-			else if (this.skip(IDENTIFIER)) this.takeValue();
+			if (mayBePrefix(this.sql.charCodeAt(this.at + 1)) && this.skip(STRING_START)) this.takeString(start);
+			else if (mayBePrefix(this.sql.charCodeAt(this.at + 1)) && this.skip(IDENTIFIER)) this.takeValue();
 			else if (this.skip(WORD)) this.takeWord(start);
 			else this.takeMark();
 		} else if (isDigit(code) || (code === DOT && isDigit(this.sql.charCodeAt(this.at + 1)))) {
@@ -193,6 +193,16 @@ const LOWER_E = 101;
 
 function isDigit(code: number): boolean {
 	return code >= 48 && code <= 57;
+}
+
+/** Blanks that \s knows and no word begins with. */
+function isSpaceLike(code: number): boolean {
+	return (code >= 11 && code <= 13) || code >= 128;
+}
+
+/** Behind the E of E'…' and the U of U&'…' stands a quote or an ampersand. */
+function mayBePrefix(next: number): boolean {
+	return next === QUOTE || next === 38;
 }
 
 function isWordStart(code: number): boolean {

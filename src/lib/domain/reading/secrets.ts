@@ -1,12 +1,8 @@
 /** What takes the place of a likely secret. */
 export const MASKED = '[masked]';
 
-/** Whatever may hold one of the patterns below holds one of these. */
-const SUSPECT =
-	/@|:\/\/|pass|pwd|secret|token|key|auth|bearer|basic|-----BEGIN|eyJ|AKIA|\d\.\d{1,3}\.\d|[\da-f]:[\da-f]{0,4}:|gh[pousr]_|xox[a-z]-|cw_/i;
-
 const NAMES =
-	'(?:[\\w-]*(?:password|passwd|passphrase|secret|secret[_-]key|api[_-]?key|access[_-]?key|private[_-]?key|' +
+	'(?:[\\w-]{0,40}(?:password|passwd|passphrase|secret|secret[_-]key|api[_-]?key|access[_-]?key|private[_-]?key|' +
 	'auth[_-]?token|access[_-]?token|refresh[_-]?token|sslpassword)|pwd|token)';
 /** A name, `=` or `:`, and a value that is neither a parameter nor masked; `a = b` of two columns is none. */
 const NAMED = new RegExp(
@@ -22,31 +18,75 @@ export function isSecretName(key: string): boolean {
 	return NAME.test(key);
 }
 
-type Replacement = string | ((all: string, name: string, value: string) => string);
+/** What a secret looks like, and what every text that holds one holds: looked for first, for most hold nothing. */
+interface Rule {
+	trigger: string | RegExp;
+	pattern: RegExp;
+	replacement: string | ((all: string, name: string, value: string) => string);
+}
 
-const RULES: readonly [RegExp, Replacement][] = [
-	[/-----BEGIN [A-Z ]*PRIVATE KEY-----[^]*?(?:-----END [A-Z ]*PRIVATE KEY-----|$)/g, MASKED],
-	// A password may hold an @ of its own: everything up to the last one before the host.
-	[/\b([a-z][a-z0-9+.-]*:\/\/)[^\s"'<>/]*:[^\s"'<>]*@(?=[\w.[-])/gi, `$1${MASKED}@`],
-	[
-		/\b(authorization["']?\s*[:=]\s*["']?)(?!\[masked\])(?:(?:bearer|basic|digest|token)\s+)?[^\s"',;[]+/gi,
-		`$1${MASKED}`
-	],
-	[/\b(bearer|basic)\s+[\w.~+/=-]{8,}/gi, `$1 ${MASKED}`],
-	[NAMED, maskNamed],
-	[/\beyJ[\w-]{5,}\.[\w-]{5,}(?:\.[\w-]*)?/g, MASKED],
-	[
-		/\b(?:AKIA|ASIA)[0-9A-Z]{16}\b|\bgh[pousr]_\w{20,}|\bxox[a-z]-[\w-]{10,}|\b[sr]k[_-](?:live|test|proj)?[\w-]{16,}|\bcw_\w{16,}/g,
-		MASKED
-	],
-	[/[\w.%+-]+@(?:[\w-]+\.)+[a-z]{2,}\b/gi, MASKED],
-	[/(?<![\d.])(?:(?:25[0-5]|2[0-4]\d|1?\d?\d)\.){3}(?:25[0-5]|2[0-4]\d|1?\d?\d)(?![\d.])/g, MASKED],
-	[/(?<![\w:])(?:[\da-f]{1,4}:){4,7}[\da-f]{1,4}(?![\w:])/gi, MASKED],
-	[/(?<![\w:])(?:[\da-f]{1,4}:){1,6}(?::[\da-f]{1,4}){1,6}(?![\w:])/gi, MASKED]
+const RULES: readonly Rule[] = [
+	{
+		trigger: '-----BEGIN',
+		pattern: /-----BEGIN [A-Z ]*PRIVATE KEY-----[^]*?(?:-----END [A-Z ]*PRIVATE KEY-----|$)/g,
+		replacement: MASKED
+	},
+	{
+		trigger: '://',
+		// A password may hold an @ of its own: everything up to the last one before the host.
+		pattern: /\b([a-z][a-z0-9+.-]{0,30}:\/\/)[^\s"'<>/]{0,256}:[^\s"'<>]{0,256}@(?=[\w.[-])/gi,
+		replacement: `$1${MASKED}@`
+	},
+	{
+		trigger: /authorization/i,
+		pattern:
+			/\b(authorization["']?\s*[:=]\s*["']?)(?!\[masked\])(?:(?:bearer|basic|digest|token)\s+)?[^\s"',;[]+/gi,
+		replacement: `$1${MASKED}`
+	},
+	{
+		trigger: /\b(?:bearer|basic) /i,
+		pattern: /\b(bearer|basic)\s+[\w.~+/=-]{8,}/gi,
+		replacement: `$1 ${MASKED}`
+	},
+	{ trigger: /pass|pwd|secret|token|key[^"\w]/i, pattern: NAMED, replacement: maskNamed },
+	{ trigger: 'eyJ', pattern: /\beyJ[\w-]{5,}\.[\w-]{5,}(?:\.[\w-]*)?/g, replacement: MASKED },
+	{
+		trigger: /AKIA|ASIA|gh[pousr]_|xox|[sr]k[_-]|cw_/,
+		pattern:
+			/\b(?:AKIA|ASIA)[0-9A-Z]{16}\b|\bgh[pousr]_\w{20,}|\bxox[a-z]-[\w-]{10,}|\b[sr]k[_-](?:live|test|proj)?[\w-]{16,}|\bcw_\w{16,}/g,
+		replacement: MASKED
+	},
+	{
+		trigger: '@',
+		pattern: /(?<![\w.%+-])[\w.%+-]{1,128}@(?:[\w-]{1,63}\.){1,8}[a-z]{2,}\b/gi,
+		replacement: MASKED
+	}
 ];
 
-/** The rules of addresses alone, for places where other words can't be secrets. */
-const ADDRESSES = RULES.slice(-3);
+/** The rules of addresses, also used where other words can't be secrets. */
+const ADDRESSES: readonly Rule[] = [
+	{
+		trigger: /\d\.\d{1,3}\.\d/,
+		pattern: /(?<![\d.])(?:(?:25[0-5]|2[0-4]\d|1?\d?\d)\.){3}(?:25[0-5]|2[0-4]\d|1?\d?\d)(?![\d.])/g,
+		replacement: MASKED
+	},
+	{
+		trigger: /:[\da-f]{1,4}:[\da-f]{1,4}:/i,
+		pattern: /(?<![\w:])(?:[\da-f]{1,4}:){4,7}[\da-f]{1,4}(?![\w:])/gi,
+		replacement: MASKED
+	},
+	{
+		trigger: '::',
+		pattern: /(?<![\w:])(?:[\da-f]{1,4}:){1,6}(?::[\da-f]{1,4}){1,6}(?![\w:])/gi,
+		replacement: MASKED
+	}
+];
+const ALL = [...RULES, ...ADDRESSES];
+
+/** Whatever a rule may find holds one of these: one look instead of one for each rule. */
+const SUSPECT =
+	/@|:\/\/|pass|pwd|secret|token|key[^"\w]|authorization|bearer |basic |-----B|eyJ|AKIA|ASIA|gh[pousr]_|xox|[sr]k[_-]|cw_|\d\.\d{1,3}\.\d|::|:[\da-f]{1,4}:[\da-f]{1,4}:/i;
+const SUSPECT_ADDRESS = /\d\.\d{1,3}\.\d|::|:[\da-f]{1,4}:[\da-f]{1,4}:/i;
 
 function maskNamed(_all: string, name: string, value: string): string {
 	const quote = /^["']/.exec(value)?.[0] ?? '';
@@ -55,9 +95,10 @@ function maskNamed(_all: string, name: string, value: string): string {
 
 const PASSES = 6;
 
-function applyRules(text: string): string {
+function applyRules(rules: readonly Rule[], text: string): string {
 	let masked = text;
-	for (const [pattern, replacement] of RULES) {
+	for (const { trigger, pattern, replacement } of rules) {
+		if (typeof trigger === 'string' ? !masked.includes(trigger) : !trigger.test(masked)) continue;
 		masked =
 			typeof replacement === 'string'
 				? masked.replace(pattern, replacement)
@@ -75,7 +116,7 @@ export function maskSecrets(text: string): string {
 	let masked = text;
 	// What one rule takes away may lay bare the shape that another looks for.
 	for (let pass = 0; pass < PASSES; pass++) {
-		const next = applyRules(masked);
+		const next = applyRules(ALL, masked);
 		if (next === masked) break;
 		masked = next;
 	}
@@ -84,8 +125,5 @@ export function maskSecrets(text: string): string {
 
 /** IP addresses alone become `[masked]`. */
 export function maskAddresses(text: string): string {
-	if (!/\d\.\d{1,3}\.\d|[\da-f]:[\da-f]{0,4}:[\da-f:]/i.test(text)) return text;
-	let masked = text;
-	for (const [pattern] of ADDRESSES) masked = masked.replace(pattern, MASKED);
-	return masked;
+	return SUSPECT_ADDRESS.test(text) ? applyRules(ADDRESSES, text) : text;
 }

@@ -43,6 +43,10 @@ export class LogAccount {
 	private guessedZone: string | null = null;
 	private plansLeftOut = 0;
 	private filesWithoutStatement = 0;
+	/** Processes with temporary files that no statement has been found for yet. */
+	openSpills = 0;
+	/** Whether a temporary file has come with a statement of its own: then all do. */
+	statementsComeAlong = false;
 
 	/** A message that speaks of a temporary file; one that only names its path (a full disk) counts as an event. */
 	takeTemporaryFile(who: LogWho, message: string): void {
@@ -55,7 +59,10 @@ export class LogAccount {
 		const process = this.processOf(who.pid ?? '');
 		this.ledger.countFile(bytes);
 		const at = this.timeOf(who.time);
-		process.open ??= { files: 0, bytes: 0, firstAt: at, lastAt: at };
+		if (process.open === null) {
+			process.open = { files: 0, bytes: 0, firstAt: at, lastAt: at };
+			this.openSpills++;
+		}
 		process.open.files++;
 		process.open.bytes += bytes;
 		process.open.lastAt = at ?? process.open.lastAt;
@@ -74,8 +81,11 @@ export class LogAccount {
 		const process = this.processes.get(pid ?? '');
 		if (process === undefined) return;
 		process.statement = sql;
-		if (process.open !== null) this.ledger.charge(sql, process.open);
+		if (process.open === null) return;
+		this.ledger.charge(sql, process.open);
 		process.open = null;
+		this.openSpills--;
+		this.statementsComeAlong = true;
 	}
 
 	/** A statement that log_statement (before it runs) or log_min_duration_statement (after it) logged. */
@@ -159,6 +169,7 @@ export class LogAccount {
 		if (process.statement === null) this.filesWithoutStatement += process.open.files;
 		else this.ledger.charge(process.statement, process.open);
 		process.open = null;
+		this.openSpills--;
 	}
 
 	private processOf(pid: string): Process {

@@ -7,6 +7,7 @@ const RECORD_LENGTH = 4 * 1024 * 1024;
 
 /** Masks a log as it comes in, a record at a time: a literal may span the lines of a statement. */
 export class LogMasker {
+	private readonly messages = new MessageMasker();
 	private rest = '';
 	private record: RecordLine | null = null;
 	private body = '';
@@ -62,12 +63,28 @@ export class LogMasker {
 		const { record } = this;
 		if (record === null) return;
 		const colon = record.severity + ':  ';
-		this.out += maskAddresses(record.prefix) + colon + maskMessage(record, this.body) + '\n';
+		this.out += maskAddresses(record.prefix) + colon + this.messages.mask(record, this.body) + '\n';
 		this.record = null;
 		this.body = '';
 	}
 }
 
-function maskMessage(record: RecordLine, body: string): string {
-	return isSqlRecord(record) ? maskSql(body) : maskLogMessage(body);
+/** Servers repeat themselves: short messages are remembered, and all forgotten when there are too many. */
+const REMEMBERED = 4_000;
+const REMEMBERED_LENGTH = 500;
+
+/** Masks messages, each of those that come again and again but once. */
+class MessageMasker {
+	private readonly known = new Map<string, string>();
+
+	mask(record: RecordLine, body: string): string {
+		if (isSqlRecord(record)) return maskSql(body);
+		if (body.length > REMEMBERED_LENGTH) return maskLogMessage(body);
+		const known = this.known.get(body);
+		if (known !== undefined) return known;
+		const masked = maskLogMessage(body);
+		if (this.known.size >= REMEMBERED) this.known.clear();
+		this.known.set(body, masked);
+		return masked;
+	}
 }

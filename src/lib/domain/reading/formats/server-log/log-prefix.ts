@@ -24,6 +24,16 @@ export function readPrefix(prefix: string): PrefixFacts {
 	const time = TIME.exec(prefix)?.[0] ?? null;
 	const rest = time === null ? prefix : prefix.replace(time, ' ');
 	const facts: PrefixFacts = { time, pid: pidOf(rest), user: null, database: null, application: null };
+	if (rest.includes('=')) readPairs(rest, facts);
+	const at = rest.includes('@') ? AT.exec(rest) : null;
+	if (at !== null && at[1] !== '[unknown]') {
+		facts.user ??= at[1] || null;
+		facts.database ??= at[2] || null;
+	}
+	return facts;
+}
+
+function readPairs(rest: string, facts: PrefixFacts): void {
 	for (const [, key = '', value = ''] of rest.matchAll(PAIR)) {
 		const name = value.trim();
 		if (name === '' || name === '[unknown]') continue;
@@ -31,12 +41,14 @@ export function readPrefix(prefix: string): PrefixFacts {
 		else if (/^d/i.test(key)) facts.database = name;
 		else facts.application = name;
 	}
-	const at = AT.exec(rest);
-	if (at !== null && at[1] !== '[unknown]') {
-		facts.user ??= at[1] || null;
-		facts.database ??= at[2] || null;
-	}
-	return facts;
+}
+
+/** The process alone, which is all that most records are asked for. */
+export function readPid(prefix: string): string | null {
+	const bracketed = BRACKETED.exec(prefix)?.[1];
+	if (bracketed !== undefined) return bracketed;
+	const time = TIME.exec(prefix)?.[0];
+	return pidOf(time === undefined ? prefix : prefix.replace(time, ' '));
 }
 
 function pidOf(rest: string): string | null {

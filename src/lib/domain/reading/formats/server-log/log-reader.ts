@@ -1,28 +1,60 @@
 import type { FormatResult } from '../../reading';
 import { LogAccount } from './log-account';
 import { takeWords } from './log-event';
-import { readPrefix } from './log-prefix';
+import { readPid, readPrefix } from './log-prefix';
+import { NeedleFinder } from './needle-finder';
 import { isStatementRecord, readRecordLine, type RecordLine } from './record-line';
 
 const VERB =
 	/^\s*(?:select|with|insert|update|delete|merge|execute|create|explain|declare|fetch|refresh|copy|call)\b/i;
 /** A record this long is a plan or a statement; what comes behind is left out of it. */
 const RECORD_LINES = 100_000;
+/** How many lines behind a temporary file its statement is looked for; processes interleave. */
+const STATEMENT_WITHIN = 400;
 
-/** Reads a masked log on stderr as it comes in. */
+/** What a line holds that is worth reading. The first line of a plan ends before its body begins. */
+const NEEDLES = [
+	'pgsql_tmp',
+	'authorized: user=',
+	':\n\tQuery Text:',
+	':\n\t{',
+	':\n\t<explain',
+	'plan:\n',
+	'temp_file_limit',
+	'starting PostgreSQL'
+];
+/** Statements that were logged for their own sake; asked for as long as spills don't bring their own. */
+const LOGGED = ['statement: ', 'execute '];
+
+/** Reads a masked log on stderr as it comes in. Lines that nothing is asked of are never looked at. */
 export class LogReader {
 	private readonly account = new LogAccount();
+	private readonly needles = new NeedleFinder(NEEDLES);
+	private readonly logged = new NeedleFinder(LOGGED);
 	private record: RecordLine | null = null;
 	private body: string[] = [];
+	private linesToRead = 0;
 
 	/** Takes whole lines of masked text. */
 	push(text: string): void {
-		let from = 0;
-		for (let end = text.indexOf('\n'); end >= 0; end = text.indexOf('\n', from)) {
-			this.line(text.slice(from, end));
-			from = end + 1;
+		const end = text.length;
+		this.needles.begin(text);
+		this.logged.begin(text);
+		for (let from = 0; from < end;) {
+			if (this.record === null && this.linesToRead === 0) {
+				from = this.nextLine(text, from);
+				if (from >= end) return;
+			}
+			const lineEnd = text.indexOf('\n', from);
+			const stop = lineEnd < 0 ? end : lineEnd;
+			const line = text.slice(from, stop);
+			// A record that was asked for ends where the next begins; whether that is asked for is seen above.
+			if (this.record !== null && this.linesToRead === 0 && readRecordLine(line) !== null) this.flush();
+			else {
+				this.line(line);
+				from = stop + 1;
+			}
 		}
-		if (from < text.length) this.line(text.slice(from));
 	}
 
 	finish(): FormatResult {
@@ -30,7 +62,15 @@ export class LogReader {
 		return this.account.finish();
 	}
 
+	/** The beginning of the next line that holds something. */
+	private nextLine(text: string, from: number): number {
+		let at = this.needles.next(from);
+		if (!this.account.statementsComeAlong) at = Math.min(at, this.logged.next(from));
+		return at >= text.length ? text.length : text.lastIndexOf('\n', at - 1) + 1;
+	}
+
 	private line(line: string): void {
+		if (this.linesToRead > 0) this.linesToRead--;
 		const record = readRecordLine(line);
 		if (record !== null) {
 			this.flush();
@@ -44,16 +84,22 @@ export class LogReader {
 		this.record = null;
 		if (body.length > 0) this.body = [];
 		const { message } = record;
-		if (message.includes('pgsql_tmp')) this.account.takeTemporaryFile(readPrefix(record.prefix), message);
+		if (message.includes('pgsql_tmp')) this.takeTemporaryFile(record);
 		else if (isStatementRecord(record) || VERB.test(message)) this.takeStatement(record, body);
 		else if (body.length > 0 && this.takePlan(message, body)) return;
 		else if (message.includes('user=') && message.includes('database=')) {
-			this.account.takeConnection(readPrefix(record.prefix).pid, message);
+			this.account.takeConnection(readPid(record.prefix), message);
 		} else this.takeOther(record, body);
 	}
 
+	private takeTemporaryFile(record: RecordLine): void {
+		this.account.takeTemporaryFile(readPrefix(record.prefix), record.message);
+		this.linesToRead = STATEMENT_WITHIN;
+	}
+
 	private takeStatement(record: RecordLine, body: string[]): void {
-		this.account.takeStatement(readPrefix(record.prefix).pid, whole(record.message, body));
+		this.account.takeStatement(readPid(record.prefix), whole(record.message, body));
+		if (this.account.openSpills === 0) this.linesToRead = 0;
 	}
 
 	private takePlan(first: string, body: string[]): boolean {
@@ -63,7 +109,7 @@ export class LogReader {
 
 	private takeOther(record: RecordLine, body: string[]): void {
 		if (record.message.includes('temp_file_limit')) this.account.takeFileLimit();
-		else takeWords(this.account, whole(record.message, body), readPrefix(record.prefix).pid);
+		else takeWords(this.account, whole(record.message, body), readPid(record.prefix));
 	}
 }
 
