@@ -43,12 +43,21 @@ export function sayTables(operator: Operator): string {
  * there are several.
  */
 export function nameIn(root: Operator): (operator: Operator) => string {
-	const counts = new Map<string, number>();
-	for (const operator of walkOperators(root))
-		counts.set(sayKind(operator), (counts.get(sayKind(operator)) ?? 0) + 1);
+	// Counted at the first name that is asked for: most sentences name nothing.
+	let counts: Map<string, number> | null = null;
 	return (operator) => {
+		counts ??= countKinds(root);
 		const kind = sayKind(operator);
 		const isOnly = counts.get(kind) === 1 && operator.relation === null;
 		return `the ${isOnly ? kind : phraseOperator(operator)}`;
 	};
+}
+
+function countKinds(root: Operator): Map<string, number> {
+	const counts = new Map<string, number>();
+	for (const operator of walkOperators(root)) {
+		const kind = sayKind(operator);
+		counts.set(kind, (counts.get(kind) ?? 0) + 1);
+	}
+	return counts;
 }
