@@ -1,4 +1,4 @@
-import MiniSearch from 'minisearch';
+import MiniSearch, { type SearchOptions } from 'minisearch';
 import { findNames, findWords } from '$lib/domain/precedent/tokens';
 import { STOP_WORDS } from '$lib/domain/precedent/stop-words';
 import { listSymptomTexts } from './symptom-texts';
@@ -22,7 +22,6 @@ export interface ShortDocument {
 export interface ShortHit {
 	kind: ShortDocument['kind'];
 	key: string;
-	score: number;
 }
 
 /** Documents added before other work gets its turn: well under 50 ms on a slow machine. */
@@ -92,17 +91,21 @@ export class AsYouType {
 		if (!this.#index.has(document.id)) this.#index.add(document);
 	}
 
-	/** What meets all the words, best first; where nothing does, what meets them with a typo or two. */
+	/** What meets all the words, the last one by its beginning; best first. */
 	find(words: readonly string[], limit: number): ShortHit[] {
-		const line = words.join(' ');
-		const exact = this.#index.search(line, { tokenize: cutWords });
-		const found =
-			exact.length > 0 ? exact : this.#index.search(line, { tokenize: cutWords, fuzzy: allowTypos });
-		return found.slice(0, limit).map((result) => ({
-			kind: result.kind as ShortHit['kind'],
-			key: String(result.key),
-			score: result.score
-		}));
+		return this.#search(words, limit, {});
+	}
+
+	/** What meets all the words with a typo or two; best first. Reads much of the index: for when nothing else is found. */
+	guess(words: readonly string[], limit: number): ShortHit[] {
+		return this.#search(words, limit, { fuzzy: allowTypos });
+	}
+
+	#search(words: readonly string[], limit: number, options: SearchOptions): ShortHit[] {
+		return this.#index
+			.search(words.join(' '), { ...options, tokenize: cutWords })
+			.slice(0, limit)
+			.map((result) => ({ kind: result.kind as ShortHit['kind'], key: String(result.key) }));
 	}
 }
 

@@ -64,13 +64,15 @@ async function rank(query: SearchQuery, depth: number): Promise<RankedId[]> {
 		return newest.map((number, index) => ({ id: `incident:${number}`, score: 1 / (1 + index) }));
 	}
 	const [short, incidents, runbooks, entries] = await Promise.all([
-		findShort(query, depth),
+		findShort(query, depth, 'find'),
 		expression === null ? [] : store.matchIncidents(expression, query.filters, depth),
 		expression === null ? [] : store.matchRunbooks(expression, depth),
 		expression === null ? [] : store.matchEntries(expression, query.filters, depth)
 	]);
+	const isMet = short.length + incidents.length + runbooks.length + entries.length > 0;
 	const fused = fuseRankings([
-		{ ids: short, weight: SHORT_FIELDS_COUNT },
+		// Typos are guessed at only where nothing is met as it was typed.
+		{ ids: isMet ? short : await findShort(query, depth, 'guess'), weight: SHORT_FIELDS_COUNT },
 		{ ids: incidents.map((number) => `incident:${number}`), weight: LONG_TEXT_COUNTS },
 		{ ids: runbooks.map((slug) => `runbook:${slug}`), weight: LONG_TEXT_COUNTS },
 		{ ids: entries.map((id) => `entry:${id}`), weight: ENTRIES_COUNT }
@@ -90,12 +92,12 @@ function putNumberFirst(ranked: readonly RankedId[], number: number | null): Ran
 }
 
 /** Ids from the short fields, best first; incidents only as far as they pass the filters. */
-async function findShort(query: SearchQuery, depth: number): Promise<string[]> {
+async function findShort(query: SearchQuery, depth: number, how: 'find' | 'guess'): Promise<string[]> {
 	// Phrases and exclusions are questions to the full text; only words can be met by a beginning or a typo.
 	if (query.words.length === 0 || query.phrases.length + query.excluded.length > 0) return [];
 	const index = asYouType();
 	await Promise.race([index.load(), new Promise((resolve) => setTimeout(resolve, WAIT_FOR_LOAD_MS))]);
-	const hits = index.find(query.words, depth);
+	const hits = index[how](query.words, depth);
 	if (!hasFilters(query)) return hits.map((hit) => `${hit.kind}:${hit.key}`);
 	const numbers = hits.filter((hit) => hit.kind === 'incident').map((hit) => hit.key);
 	const kept = await store.keepFiltered(numbers, query.filters);
