@@ -66,13 +66,33 @@ async function readThrough(evidence: OpenEvidence, sink: Sink): Promise<FormatRe
 		if (reader !== null) reader.push(piece);
 		else if (evidence.kind === 'text') text += piece;
 	}
-	if (reader !== null) return reader.finish();
+	if (reader !== null) return withoutFault(() => reader.finish());
 	return evidence.kind === 'text' ? readText(evidence.format, text) : null;
 }
 
 /** Reads masked text in a known format; an unforeseen fault of a reader becomes a warning and loses nothing. */
-export function readText(format: TextFormat, text: string): FormatResult {
-	return format.read(text);
+export function readText(format: Pick<TextFormat, 'read'>, text: string): FormatResult {
+	return withoutFault(() => format.read(text));
+}
+
+/**
+ * A reader that meets what nobody foresaw must not lose the evidence: the fault is ours, the file is kept, and the
+ * warning carries what went wrong for whoever mends the reader.
+ */
+function withoutFault(read: () => FormatResult): FormatResult {
+	try {
+		return read();
+	} catch (fault) {
+		const what = fault instanceof Error ? fault.message : String(fault);
+		const message = `Catchwater's own reader failed on this file (${what}). The file is kept; send it to whoever runs Catchwater, and reread it after an update.`;
+		return {
+			plans: [],
+			spills: null,
+			hints: null,
+			engineVersion: null,
+			warnings: [{ code: 'reader-fault', message, at: null }]
+		};
+	}
 }
 
 function describe(

@@ -1,7 +1,7 @@
-import { interpretPlan } from '../symptom/interpret-plan';
+import { interpretPlan, type Interpretation } from '../symptom/interpret-plan';
 import { fingerprintStatement } from './fingerprint';
 import type { Operator, PlanOperator } from './operator';
-import type { Format, FormatResult, Plan, Reading, Statement } from './reading';
+import type { Format, FormatResult, Plan, Reading, ReadingWarning, Statement } from './reading';
 
 /** What all readings of one file have in common. */
 export interface EvidenceFile {
@@ -19,10 +19,9 @@ export function toReadings(
 	result: FormatResult
 ): Reading[] {
 	const planFormat: Format = kind === 'log' ? 'postgres-auto-explain' : format;
-	const plans = result.plans.map((plan, index) => ({
-		...planReading(file, planFormat, plan),
-		warnings: index === 0 && kind !== 'log' ? [...result.warnings, ...plan.warnings] : plan.warnings
-	}));
+	const plans = result.plans.map((plan, index) =>
+		planReading(file, planFormat, plan, index === 0 && kind !== 'log' ? result.warnings : [])
+	);
 	if (kind !== 'log' && plans.length > 0) return plans;
 	const whole: Reading = {
 		...emptyReading(file, format, kind),
@@ -61,8 +60,13 @@ function engineOf(format: Format): Reading['engine'] {
 	return format === 'showplan-xml' || format === 'extended-event-xml' ? 'showplan' : 'unknown';
 }
 
-function planReading(file: EvidenceFile, format: Format, plan: Plan): Reading {
-	const { symptoms, trails, causes, sizing } = interpretPlan(plan, null);
+function planReading(
+	file: EvidenceFile,
+	format: Format,
+	plan: Plan,
+	fileWarnings: readonly ReadingWarning[]
+): Reading {
+	const { symptoms, trails, causes, sizing, warnings } = interpret(plan);
 	return {
 		...emptyReading(file, format, 'plan'),
 		engine: plan.engine,
@@ -77,8 +81,26 @@ function planReading(file: EvidenceFile, format: Format, plan: Plan): Reading {
 		trails,
 		symptoms,
 		causes,
-		sizing
+		sizing,
+		warnings: [...fileWarnings, ...plan.warnings, ...warnings]
 	};
+}
+
+/** What a plan shows; a fault in a rule costs the rules and not the plan, and is said in a warning. */
+function interpret(plan: Plan): Interpretation & { warnings: ReadingWarning[] } {
+	try {
+		return { ...interpretPlan(plan, null), warnings: [] };
+	} catch (fault) {
+		const what = fault instanceof Error ? fault.message : String(fault);
+		const message = `Looking for symptoms failed on this plan (${what}): its operators are shown, its symptoms are not. Reread it after an update.`;
+		return {
+			symptoms: [],
+			trails: [],
+			causes: [],
+			sizing: [],
+			warnings: [{ code: 'rules-fault', message, at: null }]
+		};
+	}
 }
 
 /** A masked statement with its fingerprint; null where there is none. */

@@ -140,6 +140,8 @@ function splitAtTop(tokens: readonly Token[], at: (token: Token) => boolean): To
 export interface SideFindings {
 	/** Columns named, without their table's alias. */
 	columns: string[];
+	/** The alias before each column, as written; null: none. */
+	aliases: (string | null)[];
 	/** Types that something holding a column is cast to. */
 	casts: string[];
 	/** Functions called with a column inside. */
@@ -152,7 +154,14 @@ export interface SideFindings {
 
 /** Columns of an expression and what is done with them. */
 export function inspectSide(tokens: readonly Token[]): SideFindings {
-	const findings: SideFindings = { columns: [], casts: [], functions: [], arithmetic: false, json: false };
+	const findings: SideFindings = {
+		columns: [],
+		aliases: [],
+		casts: [],
+		functions: [],
+		arithmetic: false,
+		json: false
+	};
 	const calls: { name: string | null; columnsBefore: number }[] = [];
 	let operators = 0;
 	for (let at = 0; at < tokens.length; at++) {
@@ -171,7 +180,10 @@ export function inspectSide(tokens: readonly Token[]): SideFindings {
 		} else if (token.kind === 'operator') {
 			if (/^#?->>?$|^#>>?$/.test(token.text)) findings.json = true;
 			else if (/^[-+*/%^]$|^\|\|$/.test(token.text)) operators++;
-		} else if (isColumn(tokens, at)) findings.columns.push(token.text);
+		} else if (isColumn(tokens, at)) {
+			findings.columns.push(token.text);
+			findings.aliases.push(tokens[at - 1]?.kind === 'dot' ? (tokens[at - 2]?.text ?? null) : null);
+		}
 	}
 	findings.arithmetic = operators > 0 && findings.columns.length > 0;
 	return findings;

@@ -1,6 +1,6 @@
 import { readFileSync } from 'node:fs';
 import { describe, expect, test } from 'vitest';
-import { readEvidence } from '$lib/domain/reading/read-evidence';
+import { readEvidence, readText } from '$lib/domain/reading/read-evidence';
 import { BOUNDS } from '$lib/domain/reading/bounds';
 import {
 	evidenceOf,
@@ -13,6 +13,20 @@ import {
 
 const PLAN =
 	"Seq Scan on crate c  (cost=0.00..9.10 rows=5 width=8) (actual time=0.010..0.200 rows=7 loops=2)\n  Filter: (state = 'open'::text)\n  Rows Removed by Filter: 3\n";
+
+describe('readText', () => {
+	test('keeps the evidence and says so when a reader meets what nobody foresaw', () => {
+		const broken = {
+			read: () => {
+				throw new Error('a path that is no path');
+			}
+		};
+		const { plans, warnings } = readText(broken, 'anything');
+		expect(plans).toEqual([]);
+		expect(warnings.map(({ code }) => code)).toEqual(['reader-fault']);
+		expect(warnings[0]?.message).toContain('a path that is no path');
+	});
+});
 
 describe('readEvidence on what it cannot read', () => {
 	test.each([

@@ -58,6 +58,7 @@ describe('inspectSide', () => {
 	test('names columns without their table', () => {
 		expect(inspect('i.invoice_no')).toEqual({
 			columns: ['invoice_no'],
+			aliases: ['i'],
 			casts: [],
 			functions: [],
 			arithmetic: false,

@@ -41,11 +41,22 @@ export function findWrapping(operator: PlanOperator): string | null {
 		const sides = splitComparison(comparison);
 		if (sides === null) continue;
 		for (const side of [sides.left, sides.right]) {
-			const found = wrappingOf(inspectSide(side), castGuess);
+			const findings = inspectSide(side);
+			const found = namesOwnColumn(findings, operator) ? wrappingOf(findings, castGuess) : null;
 			if (found !== null) return found;
 		}
 	}
 	return null;
+}
+
+/**
+ * Whether a side names a column of the scanned table. PostgreSQL writes columns of an outer query with their alias
+ * ("pages = (m.tier + 100)"): whatever is done with those, an index on the scanned column could serve.
+ */
+function namesOwnColumn(side: SideFindings, operator: PlanOperator): boolean {
+	return side.aliases.some(
+		(alias) => alias === null || alias.replaceAll('"', '') === (operator.alias ?? operator.relation)
+	);
 }
 
 function wrappingOf(side: SideFindings, castGuess: boolean): string | null {
