@@ -24,6 +24,8 @@ export interface LogWho {
 }
 
 interface Process {
+	/** The line of its connection, not taken apart yet. */
+	authorized: string | null;
 	user: string | null;
 	database: string | null;
 	application: string | null;
@@ -66,6 +68,7 @@ export class LogAccount {
 		process.open.files++;
 		process.open.bytes += bytes;
 		process.open.lastAt = at ?? process.open.lastAt;
+		nameConnection(process);
 		this.applications.count(process.application ?? who.application);
 		this.databases.count(process.database ?? who.database);
 		this.users.count(process.user ?? who.user);
@@ -96,14 +99,10 @@ export class LogAccount {
 		if (ended) this.closeSpill(process);
 	}
 
-	/** "connection authorized: user=… database=… application_name=…" */
+	/** "connection authorized: user=… database=… application_name=…"; taken apart when the process spills. */
 	takeConnection(pid: string | null, message: string): void {
-		const match = AUTHORIZED.exec(message);
-		if (match === null) return;
 		const process = this.processOf(pid ?? '');
-		process.user = match[1] ?? process.user;
-		process.database = match[2] ?? process.database;
-		process.application = match[3]?.trim() || process.application;
+		process.authorized = message;
 	}
 
 	/** A plan that auto_explain logged; `first` is its line with the duration. False: there is none. */
@@ -175,7 +174,14 @@ export class LogAccount {
 	private processOf(pid: string): Process {
 		const known = this.processes.get(pid);
 		if (known !== undefined) return known;
-		const process = { user: null, database: null, application: null, statement: null, open: null };
+		const process = {
+			authorized: null,
+			user: null,
+			database: null,
+			application: null,
+			statement: null,
+			open: null
+		};
 		if (this.processes.size >= PROCESSES) this.forgetOldest();
 		this.processes.set(pid, process);
 		return process;
@@ -188,4 +194,13 @@ export class LogAccount {
 			return;
 		}
 	}
+}
+
+function nameConnection(process: Process): void {
+	const match = process.authorized === null ? null : AUTHORIZED.exec(process.authorized);
+	if (match === null) return;
+	process.authorized = null;
+	process.user = match[1] ?? process.user;
+	process.database = match[2] ?? process.database;
+	process.application = match[3]?.trim() || process.application;
 }

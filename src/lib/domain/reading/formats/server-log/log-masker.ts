@@ -79,7 +79,10 @@ class MessageMasker {
 
 	mask(record: RecordLine, body: string): string {
 		if (isSqlRecord(record)) return maskSql(body);
-		if (body.length > REMEMBERED_LENGTH) return maskLogMessage(body);
+		// Statements differ by their literals: remembering them would only fill the memory.
+		if (body.length > REMEMBERED_LENGTH || body.startsWith('duration: ') || body.startsWith('statement: ')) {
+			return maskLogMessage(body);
+		}
 		const known = this.known.get(body);
 		if (known !== undefined) return known;
 		const masked = maskLogMessage(body);

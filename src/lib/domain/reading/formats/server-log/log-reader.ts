@@ -85,11 +85,11 @@ export class LogReader {
 		if (body.length > 0) this.body = [];
 		const { message } = record;
 		if (message.includes('pgsql_tmp')) this.takeTemporaryFile(record);
-		else if (isStatementRecord(record) || VERB.test(message)) this.takeStatement(record, body);
-		else if (body.length > 0 && this.takePlan(message, body)) return;
-		else if (message.includes('user=') && message.includes('database=')) {
+		else if (message.includes('authorized: user=')) {
 			this.account.takeConnection(readPid(record.prefix), message);
-		} else this.takeOther(record, body);
+		} else if (isStatementRecord(record) || VERB.test(message)) this.takeStatement(record, body);
+		else if (body.length > 0 && this.takePlan(message, body)) return;
+		else this.takeOther(record, body);
 	}
 
 	private takeTemporaryFile(record: RecordLine): void {
