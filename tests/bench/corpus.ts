@@ -14,14 +14,23 @@ const WORDS = 300;
 const SYMPTOMS = 4;
 /** Every so many incidents one has a reading. */
 const READING_EVERY = 10;
-const SYLLABLES = ['ka', 'lo', 'mi', 'ne', 'pu', 'ra', 'se', 'ti', 'vo', 'zu'];
+const CONSONANTS = 'bcdfghjklmnpqrstvwxyz';
+const VOWELS = 'aeiou';
 const BATCH = 500;
 
 export const random = seededRandom(7);
 
-/** A word by its place in Zipf's order: 0 is the commonest. */
+/** A word by its place in Zipf's order (0 is the commonest): two to four syllables, spread over the alphabet. */
 function wordAt(rank: number): string {
-	return [...String(rank + 1000)].map((digit) => SYLLABLES[Number(digit)] ?? '').join('');
+	const syllables = CONSONANTS.length * VOWELS.length;
+	let left = (rank + 1) * 7919;
+	let word = '';
+	while (left > 0 || word.length < 4) {
+		const syllable = left % syllables;
+		word += `${CONSONANTS[Math.floor(syllable / VOWELS.length)]}${VOWELS[syllable % VOWELS.length]}`;
+		left = Math.floor(left / syllables);
+	}
+	return word;
 }
 
 /** A place drawn so that place r comes about 1 / r as often as the first (inverse of the harmonic sum). */
