@@ -1,9 +1,13 @@
 import { listRequiredChecks } from '$lib/domain/caution/required-checks';
 import type { Attempt, AttemptOutcome } from '$lib/domain/incident/attempt';
+import type { Evidence } from '$lib/domain/incident/incident';
 import { can } from '$lib/domain/person/can';
 import type { Actor } from '$lib/domain/person/person';
 import { fail, ok, type Outcome } from '$lib/domain/problem';
 import { suggestBlanks } from './suggest-blanks';
+import * as evidence from '../evidence/evidence-service';
+import { removeFromSpool } from '../evidence/spool';
+import type { Upload } from '../evidence/upload';
 import * as attempts from '../incidents/attempts-service';
 import { nameAttempt } from '../incidents/compare-attempts';
 import * as entries from '../incidents/entries-service';
@@ -56,22 +60,22 @@ export async function read(actor: Actor, place: Place, wanted: number | null) {
 	if (!incident.ok) return incident;
 	if (!responders.ok) return responders;
 	const { attempt, page } = found.value;
-	const { number, title, revision, evidence } = incident.value;
+	const { number, title, revision, evidence: pieces } = incident.value;
 	const next = attempt.outcome === null ? findNext(attempt) : CONCLUDE;
 	const current = page.steps.find((step) => step.number === (wanted ?? next)) ?? null;
 	const { slug, state } = page.runbook;
 	return ok({
 		// The comparison goes along as it is shown: two plans may have thousands of operators.
 		attempt: { ...attempt, comparison: null },
-		comparison: nameAttempt(attempt, evidence),
+		comparison: nameAttempt(attempt, pieces),
 		incident: { number, title, revision },
-		evidence: evidence.map(({ id, name }) => ({ id, name })),
+		evidence: pieces.map(({ id, name }) => ({ id, name })),
 		runbook: { slug, title: page.runbook.title, state },
 		steps: page.steps.map((step) => ({ number: step.number, title: step.title })),
 		/** null: the outcome is asked for, or stands. */
 		current,
 		/** What the evidence says for blanks of the statements, by name. */
-		suggested: suggestBlanks(evidence),
+		suggested: suggestBlanks(pieces),
 		/** To whom it may be handed over. */
 		others: responders.value.filter(({ id }) => id !== actor.personId),
 		/** What has to be ticked before the statements of the step may be copied. */
@@ -131,14 +135,39 @@ export function takeBack(
 	});
 }
 
-/** Records what came of it, which ends the attempt. */
-export function conclude(
+/** The piece that an attempt is judged by: the first plan, or whatever was given. */
+function chooseAfter(pieces: readonly Evidence[]): number | null {
+	return (pieces.find(({ kind }) => kind === 'plan') ?? pieces[0])?.id ?? null;
+}
+
+/**
+ * Records what came of it, which ends the attempt. `given`: files in the spool that show it, attached to the
+ * incident first; they stay there when the record itself is refused.
+ */
+export async function conclude(
 	actor: Actor,
 	place: Place,
-	input: { revision: number; outcome: AttemptOutcome; note: string | null; after: number | null }
+	input: {
+		revision: number;
+		outcome: AttemptOutcome;
+		note: string | null;
+		after: number | null;
+		given?: readonly Upload[];
+	}
 ): Promise<Outcome<Attempt>> {
-	const { revision, ...patch } = input;
-	return change(actor, place, revision, patch);
+	const { revision, given = [], ...patch } = input;
+	if (given.length === 0) return change(actor, place, revision, patch);
+	const found = await find(actor, place);
+	if (!found.ok) {
+		await removeFromSpool(given.map(({ path }) => path));
+		return found;
+	}
+	const attached = await evidence.attach(actor, place.incident, given);
+	if (!attached.ok) return attached;
+	return attempts.update(actor, place.incident, place.attempt, revision, {
+		...patch,
+		after: chooseAfter(attached.value)
+	});
 }
 
 /**

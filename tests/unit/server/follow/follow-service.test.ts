@@ -3,17 +3,21 @@ import type { Outcome } from '$lib/domain/problem';
 import { RunbookModel } from '$lib/server/db/models/runbook';
 import { RunbookRevisionModel } from '$lib/server/db/models/runbook-revision';
 import { write } from '$lib/server/db/transaction';
+import * as evidence from '$lib/server/evidence/evidence-service';
 import * as follow from '$lib/server/follow/follow-service';
 import * as attempts from '$lib/server/incidents/attempts-service';
 import * as incidents from '$lib/server/incidents/incidents-service';
 import { insertRunbook } from '$lib/server/runbooks/runbook-store';
+import { readSide } from '../../../fixtures/compare';
 import { withDatabase } from '../../../fixtures/database';
 import { makeIncident } from '../../../fixtures/factories/incident';
 import { makePerson } from '../../../fixtures/factories/person';
+import { listDataFiles, spool } from '../../../fixtures/spool';
 
 withDatabase();
 
 const SLUG = 'build-an-index';
+const PAIR = 'statistics-taken-swap-the-build-side';
 const STEPS = `## Before you use this on production
 
 The manual first.
@@ -163,6 +167,39 @@ describe('conclude', () => {
 		expect(ended).toMatchObject({ outcome: 'worked', note: 'Quick.' });
 		expect(ended.endedAt).not.toBeNull();
 		expect(valueOf(await follow.read(actor, place, null)).current).toBeNull();
+	});
+
+	it('leaves nothing in the spool where the attempt does not follow this runbook', async () => {
+		const { actor, place } = await begin();
+		const given = [await spool('after.json', readSide(PAIR, 'after'))];
+		const refused = await follow.conclude(
+			actor,
+			{ ...place, slug: 'another' },
+			{ revision: 1, outcome: 'worked', note: null, after: null, given }
+		);
+		expect(refused).toMatchObject({ ok: false, problem: { code: 'not_found' } });
+		expect(await listDataFiles('spool')).toEqual([]);
+	});
+
+	it('attaches the plan after it and compares it with the plan before', async () => {
+		const { actor, incident, place } = await begin();
+		const before = valueOf(
+			await evidence.attach(actor, incident, [await spool('before.json', readSide(PAIR, 'before'))])
+		)[0];
+		valueOf(await attempts.update(actor, incident, place.attempt, 1, { before: before?.id ?? null }));
+		const ended = valueOf(
+			await follow.conclude(actor, place, {
+				revision: 2,
+				outcome: 'partly',
+				note: null,
+				after: null,
+				given: [await spool('after.json', readSide(PAIR, 'after'))]
+			})
+		);
+		expect(ended.comparison?.symptomsGone).toEqual(['row-underestimate', 'sort-spill']);
+		const shown = valueOf(await follow.read(actor, place, null));
+		expect(shown.comparison?.summary).toMatch(/^Time fell from 666 to 388 ms/);
+		expect(shown.evidence.map(({ name }) => name)).toEqual(['before.json', 'after.json']);
 	});
 });
 

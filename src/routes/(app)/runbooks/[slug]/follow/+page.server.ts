@@ -8,7 +8,8 @@ import { readForm, readTyped } from '$lib/server/http/form';
 import { requireActor } from '$lib/server/http/guard';
 import { failWith, unwrap } from '$lib/server/http/respond';
 import type { Actions, PageServerLoad } from './$types';
-import { concludeForm, followQuery, handOverForm, skipForm, takeBackForm, tickForm } from './follow-input';
+import { followQuery, handOverForm, skipForm, takeBackForm, tickForm } from './follow-input';
+import { receiveConclusion } from './receive-conclusion.server';
 
 type FollowEvent = RequestEvent<{ slug: string }>;
 
@@ -57,9 +58,23 @@ export const actions = {
 	),
 	skip: act(skipForm, follow.skip),
 	takeBack: act(takeBackForm, follow.takeBack),
-	conclude: act(concludeForm, (actor, place, { note, after, ...input }) =>
-		follow.conclude(actor, place, { ...input, note: note ?? null, after: after ?? null })
-	),
+	// The plan after may be long: the body is streamed into the spool, never read as a whole.
+	conclude: async (event: FollowEvent) => {
+		const actor = requireActor(event);
+		const { place } = readAddress(event);
+		const { conclusion, typed } = await receiveConclusion(event);
+		if (!conclusion.ok) return failWith(conclusion.problem, typed);
+		const { note, after, ...input } = conclusion.value.input;
+		const { given } = conclusion.value;
+		const done = await follow.conclude(actor, place, {
+			...input,
+			note: note ?? null,
+			after: after ?? null,
+			given
+		});
+		if (!done.ok) return failWith(done.problem, typed);
+		redirect(303, toNextStep(place));
+	},
 	handOver: act(
 		handOverForm,
 		(actor, place, { to, ...input }) => follow.handOver(actor, place, { ...input, to: to ?? null }),
