@@ -1,3 +1,4 @@
+import { Op } from 'sequelize';
 import type { Role } from '$lib/domain/person/person';
 import { PersonModel } from '../db/models/person';
 import { SessionModel } from '../db/models/session';
@@ -64,6 +65,16 @@ export async function deleteSessionOf(
 	transaction: Transaction
 ): Promise<boolean> {
 	return (await SessionModel.destroy({ where: { idHash, personId }, transaction })) === 1;
+}
+
+/** Ends the sessions of a person but one (null: none is spared); answers how many there were. */
+export function deleteOtherSessions(
+	personId: number,
+	sparedHash: string | null,
+	transaction: Transaction
+): Promise<number> {
+	const spared = sparedHash === null ? {} : { idHash: { [Op.ne]: sparedHash } };
+	return SessionModel.destroy({ where: { personId, ...spared }, transaction });
 }
 
 /** Ends every session of a person. */

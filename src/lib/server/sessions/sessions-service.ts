@@ -82,6 +82,18 @@ export async function revoke(actor: Actor, idHash: string): Promise<Outcome<null
 	});
 }
 
+/** Ends all one's own sessions but the one that asks; answers how many. `currentId` is the cookie's value. */
+export async function revokeOthers(actor: Actor, currentId: string | null): Promise<Outcome<number>> {
+	const { personId } = actor;
+	if (!can(actor, 'account.own') || personId === null) return fail('forbidden', 'Only a person signs in.');
+	const spared = currentId === null ? null : hashSecret(currentId);
+	return write(async (t) => {
+		const ended = await store.deleteOtherSessions(personId, spared, t);
+		if (ended > 0) await audit.record(actor, 'session.revoke', `person:${personId}`, { sessions: ended }, t);
+		return ok(ended);
+	});
+}
+
 /** Removes sessions that have expired; called now and then by the server. */
 export function deleteExpired(): Promise<void> {
 	return lucia().deleteExpiredSessions();

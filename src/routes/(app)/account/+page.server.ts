@@ -64,6 +64,12 @@ export const actions = {
 		const ended = await sessions.revoke(requireActor(event), input.value.idHash);
 		return ended.ok ? done('sign-ins', 'That sign-in has ended.') : failWith(ended.problem, values);
 	},
+	endOthers: async (event) => {
+		const current = event.cookies.get(SESSION_COOKIE) ?? null;
+		const ended = await sessions.revokeOthers(requireActor(event), current);
+		if (!ended.ok) return failWith(ended.problem, { part: 'sign-ins' as const });
+		return done('sign-ins', 'All your other sign-ins have ended.');
+	},
 	createToken: async (event) => {
 		const actor = requireActor(event);
 		const form = await event.request.formData();

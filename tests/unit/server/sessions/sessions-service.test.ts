@@ -89,3 +89,21 @@ describe('revoke', () => {
 		expect((await sessions.validate(present.value)).actor).not.toBeNull();
 	});
 });
+
+describe('revokeOthers', () => {
+	it("ends no session of somebody else's", async () => {
+		const { actor } = await makePerson();
+		const theirs = await sessions.create((await makePerson()).id, null);
+		expect(await sessions.revokeOthers(actor, null)).toEqual({ ok: true, value: 0 });
+		expect((await sessions.validate(theirs.value)).actor).not.toBeNull();
+	});
+
+	it('spares the one that asks', async () => {
+		const { id, actor } = await makePerson();
+		const old = await sessions.create(id, 'an old telephone');
+		const present = await sessions.create(id, 'this browser');
+		expect(await sessions.revokeOthers(actor, present.value)).toEqual({ ok: true, value: 1 });
+		expect((await sessions.validate(old.value)).actor).toBeNull();
+		expect((await sessions.validate(present.value)).actor).toEqual(actor);
+	});
+});

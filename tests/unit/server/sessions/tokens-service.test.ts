@@ -87,7 +87,7 @@ describe('validate', () => {
 describe('revoke', () => {
 	it("finds nobody else's token", async () => {
 		const { record, token } = await makeToken('reader', 'reader');
-		const { actor } = await makePerson({ role: 'administrator' });
+		const { actor } = await makePerson({ role: 'curator' });
 		expect(await tokens.revoke(actor, record.id)).toMatchObject({
 			ok: false,
 			problem: { code: 'not_found' }
