@@ -60,8 +60,8 @@ describe.each(['vertical', 'horizontal'] as const)('a %s StaffGauge', (orientati
 			orientation
 		});
 		expect(container.querySelectorAll('rect[fill^="url"]')).toHaveLength(1);
-		return rerender({ marks: [marks[0], { kind: 'actual', value: 4096, text: '4 MB needed' }] }).then(() =>
-			expect(container.querySelectorAll('rect[fill^="url"]')).toHaveLength(0)
-		);
+		return rerender({
+			marks: [...marks.slice(0, 1), { kind: 'actual' as const, value: 4096, text: '4 MB needed' }]
+		}).then(() => expect(container.querySelectorAll('rect[fill^="url"]')).toHaveLength(0));
 	});
 });
