@@ -1,4 +1,3 @@
-import { createReadStream } from 'node:fs';
 import { open, rm, type FileHandle } from 'node:fs/promises';
 import { processEvidence, type EvidenceRead } from '../../domain/reading/read-evidence';
 
@@ -17,11 +16,19 @@ export interface FileToRead {
 
 /** Masks and reads a file in one pass. A masked file that could not be finished is removed. */
 export async function readEvidenceFile({ rawPath, name, maskedPath }: FileToRead): Promise<EvidenceRead> {
-	const source = createReadStream(rawPath, { highWaterMark: CHUNK_BYTES });
-	if (maskedPath === null) return processEvidence(source, name);
+	const raw = await open(rawPath, 'r');
+	try {
+		if (maskedPath === null) return await processEvidence(chunksOf(raw), name);
+		return await readAndKeep(raw, name, maskedPath);
+	} finally {
+		await raw.close();
+	}
+}
+
+async function readAndKeep(raw: FileHandle, name: string, maskedPath: string): Promise<EvidenceRead> {
 	const target = await open(maskedPath, 'wx', PRIVATE_FILE);
 	try {
-		const read = await processEvidence(source, name, (chunk) => writeAll(target, chunk));
+		const read = await processEvidence(chunksOf(raw), name, (chunk) => writeAll(target, chunk));
 		await target.sync();
 		await target.close();
 		return read;
@@ -29,6 +36,16 @@ export async function readEvidenceFile({ rawPath, name, maskedPath }: FileToRead
 		await target.close();
 		await rm(maskedPath, { force: true });
 		throw error;
+	}
+}
+
+async function* chunksOf(file: FileHandle): AsyncIterable<Uint8Array> {
+	for (;;) {
+		// A new one each time: whoever took the last may still hold it.
+		const chunk = new Uint8Array(CHUNK_BYTES);
+		const { bytesRead } = await file.read(chunk, 0, CHUNK_BYTES);
+		if (bytesRead === 0) return;
+		yield chunk.subarray(0, bytesRead);
 	}
 }
 

@@ -53,9 +53,10 @@ function parseDocuments(text: string, warnings: ReadingWarning[]): unknown[] {
 }
 
 function cutWarning(text: string, faultAt: number): ReadingWarning {
-	const at = positionAt(text, faultAt);
+	const end = text.trimEnd().length;
+	const at = positionAt(text, Math.min(faultAt, end));
 	const where = `line ${at.line}, column ${at.column}`;
-	if (faultAt >= text.trimEnd().length) {
+	if (faultAt >= end) {
 		return {
 			code: 'cut-off',
 			message: `The plan ends too early, at ${where}; what stands before was read.`,

@@ -12,6 +12,11 @@ const QUERY_TEXT = /^\s*Query Text:\s?/;
 const CHATTER =
 	/^\s*(?:SET|RESET|BEGIN|COMMIT|ROLLBACK|PREPARE|ANALYZE|VACUUM|Timing is o|Time:\s|Pager |Output format|Query Parameters:|.*\bduration: [\d.]+ ms {1,2}plan:)/;
 
+/** Whether a line begins what stands above another plan: a prompt, EXPLAIN, a statement. */
+export function beginsStatement(line: string): boolean {
+	return EXPLAIN.test(line) || VERB.test(line) || PROMPT.test(line) || QUERY_TEXT.test(line);
+}
+
 /**
  * The statement in the lines above a plan: what auto_explain prints as Query Text, else what follows EXPLAIN and its
  * options, else the last line that begins like a statement, up to the plan.

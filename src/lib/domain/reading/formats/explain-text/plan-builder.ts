@@ -1,3 +1,4 @@
+import { beginsStatement } from '../statement-above';
 import { fillZeroBlocks } from './buffers';
 import { readNodeLine } from './node-line';
 import { childrenOf, relationshipOf } from './node-words';
@@ -84,6 +85,11 @@ export class PlanBuilder {
 		takeProperty(key, value, into, this.last);
 		this.open = isOpen(value) ? { key, value, into } : null;
 		return true;
+	}
+
+	/** Whether a line stands no further right than the root and begins a statement: the plan is over. */
+	isOverAt(column: number, text: string): boolean {
+		return column <= this.rootColumn && beginsStatement(text);
 	}
 
 	/** Finishes the tree; true: its nesting had to be worked out from what each operator takes. */

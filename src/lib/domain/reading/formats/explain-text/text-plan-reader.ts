@@ -71,7 +71,7 @@ export class TextPlanReader {
 		if (this.builder !== null && this.takeInPlan(this.builder, column, text)) return;
 		if (this.begin(column, text, index)) return;
 		if (this.builder === null) this.above.push(this.lines[index] ?? text);
-		else if (this.builder.ended) this.nextAbove(index, text);
+		else if (this.builder.ended || this.builder.isOverAt(column, text)) this.nextAbove(index, text);
 		else if (!this.builder.continueProperty(text)) this.countUnknown(index);
 	}
 

@@ -1,5 +1,6 @@
 import { walkOperators } from '../../operator';
 import type { Plan, ReadingWarning } from '../../reading';
+import { bareStatement } from '../statement-above';
 import { fillMemoryLimits } from './memory-limits';
 import { figure, isRecord, records, words, type PlanEnvelope, type PlanNode } from './plan-node';
 import { toOperators } from './postgres-operator';
@@ -18,7 +19,7 @@ export function toPlan(envelope: PlanEnvelope, warnings: ReadingWarning[]): Plan
 		engine: 'postgresql',
 		engineVersion: null,
 		leastMajorVersion: leastMajorVersion(node),
-		statementText: statement === null ? null : statement.trim(),
+		statementText: statement === null ? null : bareStatement(statement),
 		planningMs: figure(envelope['Planning Time']),
 		executionMs: figure(envelope['Execution Time']) ?? figure(envelope['Total Runtime']),
 		settings: settings ?? {},
