@@ -16,6 +16,11 @@ const PLACES = [
 	'/gauge',
 	'/search?q=invoice',
 	'/account',
+	'/people',
+	'/settings',
+	'/audit',
+	'/outbox',
+	'/gauge?compare',
 	'/no-such-place'
 ];
 
@@ -38,7 +43,7 @@ function widthOf(page: Page): Promise<number> {
 }
 
 async function walk(browser: Browser, width: number, colorScheme: 'light' | 'dark'): Promise<void> {
-	const { context, page } = await signedIn(browser, 'curator', {
+	const { context, page } = await signedIn(browser, 'administrator', {
 		viewport: { width, height: 900 },
 		colorScheme
 	});
@@ -80,7 +85,9 @@ test('nothing scrolls sideways at 320 px, nor leaves half of a wide screen to on
 	browser
 }) => {
 	test.setTimeout(120_000);
-	const { context, page } = await signedIn(browser, 'responder', { viewport: { width: 320, height: 720 } });
+	const { context, page } = await signedIn(browser, 'administrator', {
+		viewport: { width: 320, height: 720 }
+	});
 	for (const place of PLACES) {
 		await page.goto(place);
 		expect(await widthOf(page), place).toBeLessThanOrEqual(320);
