@@ -22,4 +22,12 @@ describe('TextEditor', () => {
 		await waitFor(() => expect(editor?.textContent).toBe('Another text'));
 		expect(field?.value).toBe('Another text');
 	});
+
+	it('tells the words of a statement from the text round it', async () => {
+		const value = 'Read **this** first.\n\n```sql\nselect 1;\n```\n';
+		const { container } = render(TextEditor, { label: 'Text', name: 'body', value });
+		const words = () => [...container.querySelectorAll('.cm-line span')].map((span) => span.textContent);
+		await waitFor(() => expect(words()).toContain('select'), { timeout: 10_000 });
+		expect(words()).toContain('this');
+	});
 });
