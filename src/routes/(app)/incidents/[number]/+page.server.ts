@@ -1,4 +1,5 @@
 import { error } from '@sveltejs/kit';
+import { listRequiredChecks } from '$lib/domain/caution/required-checks';
 import { can } from '$lib/domain/person/can';
 import type { Incident } from '$lib/domain/incident/incident';
 import type { Actor } from '$lib/domain/person/person';
@@ -13,6 +14,7 @@ import * as precedents from '$lib/server/precedents/precedents-service';
 import * as runbooks from '$lib/server/runbooks/runbooks-service';
 import type { Actions, PageServerLoad } from './$types';
 import { attemptActions } from './attempt-actions.server';
+import type { StepFacts } from './draw-attempt';
 import { drawEvidence } from './draw-evidence';
 import { logActions } from './log-actions.server';
 import { readNumber } from './run-action.server';
@@ -41,16 +43,21 @@ function toEngine(name: string | null): Engine | null {
 	return ENGINES.find((engine) => engine === name) ?? null;
 }
 
-/** The titles of the steps of runbooks under way, by runbook; only where the revision is still the one followed. */
-async function readStepTitles(actor: Actor, { attempts }: Incident) {
+/** The steps of runbooks under way, by attempt and number; only where the revision is still the one followed. */
+async function readStepFacts(actor: Actor, { attempts }: Incident) {
 	const open = attempts.filter(({ runbook, outcome }) => runbook !== null && outcome === null);
-	const titles: Record<number, Record<number, string>> = {};
+	const facts: Record<number, Record<number, StepFacts>> = {};
 	for (const { id, runbook, runbookRevision } of open) {
 		const found = await runbooks.read(actor, runbook ?? '');
 		if (found.ok && found.value.revision === runbookRevision)
-			titles[id] = Object.fromEntries(found.value.steps.map(({ number, title }) => [number, title]));
+			facts[id] = Object.fromEntries(
+				found.value.steps.map(({ number, title, statements }) => [
+					number,
+					{ title, isChecked: listRequiredChecks(statements).length > 0 }
+				])
+			);
 	}
-	return titles;
+	return facts;
 }
 
 export const load = (async (event) => {
@@ -63,10 +70,10 @@ export const load = (async (event) => {
 		precedents.forIncident(actor, number, PRECEDENTS)
 	]);
 	const incident = unwrap(read);
-	const [suited, responders, stepTitles] = await Promise.all([
+	const [suited, responders, stepFacts] = await Promise.all([
 		runbooks.forSymptoms(actor, incident.symptoms, toEngine(incident.engine)),
 		can(actor, 'incident.write') ? people.listResponders(actor) : null,
-		readStepTitles(actor, incident)
+		readStepFacts(actor, incident)
 	]);
 	return {
 		incident: drawTexts(incident),
@@ -78,7 +85,7 @@ export const load = (async (event) => {
 		precedents: unwrap(alike),
 		runbooks: unwrap(suited),
 		responders: responders === null ? [] : unwrap(responders),
-		stepTitles
+		stepFacts
 	};
 }) satisfies PageServerLoad;
 

@@ -10,3 +10,10 @@ export interface DrawnAttempt extends EditedAttempt {
 	/** With the changed operators alone: two plans may have thousands. */
 	comparison: NamedComparison | null;
 }
+
+/** What the page knows of a step of an attempt under way. */
+export interface StepFacts {
+	title: string;
+	/** Its statements are kept back until their caution and checks are ticked, which the checklist asks for. */
+	isChecked: boolean;
+}
