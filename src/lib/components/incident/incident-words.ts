@@ -1,7 +1,7 @@
-import { wordOf } from '$lib/components/reading/operator-words';
 import type { AttemptOutcome } from '$lib/domain/incident/attempt';
 import type { IncidentState, Severity } from '$lib/domain/incident/incident';
-import { CAUSE_IDS } from '$lib/domain/symptom/symptom';
+
+export { writeCause } from '$lib/domain/symptom/id-words';
 
 /** What a severity means to those who wait. */
 export const SEVERITY_WORDS: Record<Severity, string> = {
@@ -26,8 +26,3 @@ export const OUTCOME_WORDS: Record<AttemptOutcome, string> = {
 	'no-effect': 'no effect',
 	'made-worse': 'made it worse'
 };
-
-/** A cause as words: an id of the catalogue, or the text that somebody wrote. */
-export function writeCause(cause: string): string {
-	return CAUSE_IDS.some((id) => id === cause) ? wordOf(cause) : cause;
-}

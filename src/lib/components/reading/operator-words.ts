@@ -1,6 +1,8 @@
 import type { Operator } from '$lib/domain/reading/operator';
 import { phraseOperator } from '$lib/domain/reading/operator-phrase';
 
+export { wordOf } from '$lib/domain/symptom/id-words';
+
 /** An operator in words: what it is, and what tells it from others of its kind. */
 export interface OperatorWords {
 	/** "scan of invoice_line", "hash join" */
@@ -47,9 +49,4 @@ export function overflowFigures(operator: Operator, formatBytes: (bytes: number)
 	if (batches !== null && batches > 1) parts.push(`${batches} batches`);
 	if (bytes > 0) parts.push(`${formatBytes(bytes)} on disk`);
 	return parts.length > 0 ? parts.join(', ') : null;
-}
-
-/** Ids of symptoms and causes are words: "hash-spill" → "hash spill". */
-export function wordOf(id: string): string {
-	return id.replaceAll('-', ' ').replace(/\bjit\b/, 'JIT');
 }

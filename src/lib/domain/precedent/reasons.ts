@@ -1,3 +1,4 @@
+import { ENGINE_NAMES } from '../reading/engine-names';
 import { causeFeature, relationFeature, symptomFeature } from './features';
 import type {
 	PrecedentProfile,
@@ -116,7 +117,7 @@ const SENTENCES: Record<ReasonKind, Sentence> = {
 			one !== null && one !== '' && one.toLowerCase() === other?.toLowerCase();
 		const parts = [
 			same(asked.service, profile.service) ? `service ${profile.service}` : null,
-			same(asked.engine, profile.engine) && asked.engine !== 'unknown' ? `engine ${profile.engine}` : null,
+			profile.engine !== null && same(asked.engine, profile.engine) ? ENGINE_NAMES[profile.engine] : null,
 			same(asked.database, profile.database) ? `database ${profile.database}` : null
 		].filter((part) => part !== null);
 		return parts.length === 0 ? null : `same ${parts.join(', ')}`;

@@ -1,5 +1,7 @@
 import type { Actor } from '$lib/domain/person/person';
 import type { LogHints } from '$lib/domain/reading/reading';
+import { ENGINE_NAMES } from '$lib/domain/reading/engine-names';
+import { wordOf } from '$lib/domain/symptom/id-words';
 import type { SymptomId } from '$lib/domain/symptom/symptom';
 import { record } from '../audit/audit-service';
 import { write, type Transaction } from '../db/transaction';
@@ -38,13 +40,16 @@ export function quoteName(name: string): string {
 	return `\`${name.replaceAll('`', "'")}\``;
 }
 
+/** What was read, for the log: "a PostgreSQL plan: hash spill, sort spill". */
 function summarize(read: ReadUpload): string {
 	if (read.kind === 'picture') return 'a picture';
+	const first = read.readings.find(({ kind }) => kind !== 'unknown');
+	if (first === undefined) return 'not recognised';
+	const what = ['a', ENGINE_NAMES[first.engine], first.kind].filter((word) => word !== null).join(' ');
 	const symptoms = [
 		...new Set<SymptomId>(read.readings.flatMap(({ symptoms }) => symptoms.map(({ id }) => id)))
 	];
-	const format = read.format === 'unknown' ? 'not recognised' : read.format;
-	return symptoms.length === 0 ? format : `${format}: ${symptoms.join(', ')}`;
+	return symptoms.length === 0 ? what : `${what}: ${symptoms.map(wordOf).join(', ')}`;
 }
 
 async function logIt(context: KeepContext, text: string): Promise<void> {
@@ -84,7 +89,7 @@ async function claimSameBytes(context: KeepContext, sha256: string): Promise<Evi
 	const alone = await findSameBytes(null, sha256);
 	if (alone === null) return null;
 	await updateEvidence(alone.id, { incidentNumber: context.incidentNumber }, context.transaction);
-	await logIt(context, `Attached ${quoteName(alone.name)} (${alone.format}), which stood alone until now.`);
+	await logIt(context, `Attached ${quoteName(alone.name)}, which stood alone until now.`);
 	await recordIt(context, 'evidence.claim', alone.id, { name: alone.name, sha256 });
 	return alone;
 }
@@ -109,7 +114,7 @@ async function keepRead(context: KeepContext, pending: PendingUpload, read: Read
 		context.transaction
 	);
 	await replaceReadings(evidenceId, read.readings, context.transaction);
-	await logIt(context, `Attached ${quoteName(name)} (${summarize(read)}).`);
+	await logIt(context, `Attached ${quoteName(name)}, ${summarize(read)}.`);
 	await recordIt(context, 'evidence.attach', evidenceId, { name, sha256: read.sha256 });
 	return { evidenceId, pending, late: false };
 }
@@ -189,5 +194,5 @@ export async function keepLate(context: KeepContext, row: EvidenceRow, read: Rea
 		context.transaction
 	);
 	await replaceReadings(row.id, read.readings, context.transaction);
-	await logIt(context, `Read ${quoteName(row.name)} to its end (${summarize(read)}).`);
+	await logIt(context, `Read ${quoteName(row.name)} to its end: ${summarize(read)}.`);
 }

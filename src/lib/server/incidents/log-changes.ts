@@ -1,5 +1,6 @@
 import type { IncidentChange, IncidentFacts } from '$lib/domain/incident/change-incident';
 import type { Actor, Person } from '$lib/domain/person/person';
+import { writeCause } from '$lib/domain/symptom/id-words';
 import type { Transaction } from '../db/transaction';
 import { insertEntry } from './entry-store';
 
@@ -15,7 +16,7 @@ function describeMove(before: IncidentFacts, { after }: IncidentChange, reason: 
 		case 'contained':
 			return 'Contained.';
 		case 'resolved':
-			return `Resolved. Cause: ${escapeMarkdown(after.cause ?? '')}.`;
+			return `Resolved. Cause: ${escapeMarkdown(writeCause(after.cause ?? ''))}.`;
 		case 'reviewed':
 			return 'Reviewed.';
 	}
