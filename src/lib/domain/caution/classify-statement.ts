@@ -5,8 +5,15 @@ import { notUnderstood, toCaution } from './caution-from-findings';
 import { classifyByKeywords } from './engines/keywords';
 import { classifyNode } from './engines/postgresql-classify';
 import type { Classified } from './engines/postgresql-tree';
-import { fillPlaceholders, restorePlaceholders } from './placeholders';
+import { fillPlaceholders, placeholderRestorer, restorePlaceholders } from './placeholders';
 import { splitStatements, stripComments } from './split-statements';
+
+/**
+ * Signs of which PostgreSQL's scanner makes operators and the beginnings of comments. It takes the longest run
+ * of them and gives back all but what it needs (scan.l, `yyless`), again for each sign: time grows with the
+ * square of the run's length. Nobody writes so many of them in a row.
+ */
+const ENDLESS_RUN = /[~!@#^&|`?+\-*/%<>=]{500}/;
 
 let loading: Promise<void> | null = null;
 
@@ -26,14 +33,14 @@ export async function cautionsFor(
 	await loading;
 	const filled = fillPlaceholders(sql);
 	const whole = parse(filled);
-	if ('statements' in whole) return whole.statements.map((node) => cautionOf(node, sql, engineVersion));
+	if ('statements' in whole) return cautionsOfStatements(whole.statements, sql, engineVersion);
 	return splitStatements(sql).flatMap((piece) => cautionsOfPiece(piece, engineVersion));
 }
 
 function cautionsOfPiece(piece: string, engineVersion: string | null): Caution[] {
 	const filled = fillPlaceholders(piece);
 	const parsed = parse(filled);
-	if ('statements' in parsed) return parsed.statements.map((node) => cautionOf(node, piece, engineVersion));
+	if ('statements' in parsed) return cautionsOfStatements(parsed.statements, piece, engineVersion);
 	return [
 		notUnderstood(piece, `PostgreSQL's grammar refuses it (${restorePlaceholders(parsed.why, piece)}).`)
 	];
@@ -43,6 +50,7 @@ function parse(sql: string): { statements: RawStmt[] } | { why: string } {
 	// The parser takes an empty text for a mistake of the caller.
 	if (stripComments(sql) === '') return { statements: [] };
 	if (sql.includes('\0')) return { why: 'a zero byte would hide what follows it' };
+	if (ENDLESS_RUN.test(sql)) return { why: 'more than 500 signs of operators in a row' };
 	try {
 		return { statements: parseSync(sql).stmts ?? [] };
 	} catch (error) {
@@ -53,11 +61,22 @@ function parse(sql: string): { statements: RawStmt[] } | { why: string } {
 	}
 }
 
-function cautionOf(statement: RawStmt, sql: string, engineVersion: string | null): Caution {
-	const text = textOfStatement(statement, sql);
+/** A script as its statements are cut out of it: encoded and looked through once, however many there are. */
+interface Script {
+	bytes: Uint8Array;
+	restore: (text: string) => string;
+}
+
+function cautionsOfStatements(statements: RawStmt[], sql: string, engineVersion: string | null): Caution[] {
+	const script: Script = { bytes: new TextEncoder().encode(sql), restore: placeholderRestorer(sql) };
+	return statements.map((statement) => cautionOf(statement, script, engineVersion));
+}
+
+function cautionOf(statement: RawStmt, script: Script, engineVersion: string | null): Caution {
+	const text = textOfStatement(statement, script.bytes);
 	const found = classify(statement, engineVersion);
-	if ('why' in found) return notUnderstood(text, restorePlaceholders(found.why, sql));
-	return restoreTexts(toCaution(text, found), sql);
+	if ('why' in found) return notUnderstood(text, script.restore(found.why));
+	return restoreTexts(toCaution(text, found), script.restore);
 }
 
 function classify(statement: RawStmt, engineVersion: string | null): Classified {
@@ -71,16 +90,14 @@ function classify(statement: RawStmt, engineVersion: string | null): Classified 
 }
 
 /** The statement as it was written. Positions are bytes of UTF-8, and fillPlaceholders keeps them. */
-function textOfStatement(statement: RawStmt, sql: string): string {
+function textOfStatement(statement: RawStmt, bytes: Uint8Array): string {
 	const from = statement.stmt_location ?? 0;
-	const bytes = new TextEncoder().encode(sql);
 	const end =
 		statement.stmt_len === undefined || statement.stmt_len === 0 ? bytes.length : from + statement.stmt_len;
 	return new TextDecoder().decode(bytes.subarray(from, end)).trim();
 }
 
-function restoreTexts(caution: Caution, sql: string): Caution {
-	const restore = (text: string) => restorePlaceholders(text, sql);
+function restoreTexts(caution: Caution, restore: (text: string) => string): Caution {
 	const locks = caution.locks.map(({ mode, on }) => ({ mode, on: restore(on) }));
 	return {
 		...caution,

@@ -15,12 +15,21 @@ export function fillPlaceholders(text: string): string {
 	return text.replace(PLACEHOLDER, (whole: string, name: string) => standIn(name, whole));
 }
 
-/** Turns the identifiers of fillPlaceholders back into what was written. */
-export function restorePlaceholders(text: string, original: string): string {
+/**
+ * What turns the identifiers of fillPlaceholders back into what was written. Made once a script: a script of
+ * thousands of statements would otherwise be looked through once for each.
+ */
+export function placeholderRestorer(original: string): (text: string) => string {
 	const written = new Map(
 		findPlaceholders(original).map((whole) => [standIn(whole.slice(2, -2), whole).toLowerCase(), whole])
 	);
-	return text.replace(STAND_IN, (found: string) => written.get(found.toLowerCase()) ?? found);
+	if (written.size === 0) return (text) => text;
+	return (text) => text.replace(STAND_IN, (found: string) => written.get(found.toLowerCase()) ?? found);
+}
+
+/** Turns the identifiers of fillPlaceholders in one text back into what was written. */
+export function restorePlaceholders(text: string, original: string): string {
+	return placeholderRestorer(original)(text);
 }
 
 function standIn(name: string, whole: string): string {

@@ -48,10 +48,22 @@ describe('cautionsFor, what is not understood', () => {
 	it.each([
 		['a tree of 200,000 additions', `select ${'1+'.repeat(200_000)}1`],
 		['100,000 brackets', `select ${'('.repeat(100_000)}`],
+		// PostgreSQL's scan.l reads such a run again from each of its signs: minutes for these.
+		['50,000 comments that begin one in the other', '/*'.repeat(50_000)],
+		['100,000 operator signs in a row', `select 1 ${'+'.repeat(100_000)} 1`],
 		['a zero byte before more', 'select 1\0; drop table booking']
 	])('survives %s', async (_what, sql) => {
 		const [caution] = await cautionsFor('postgresql', null, sql);
 		expect(caution?.kind).toBe('not-understood');
+	});
+
+	it('puts the placeholders back into each of 2,000 statements', async () => {
+		const sql = Array.from({ length: 2000 }, (_, n) => `drop table {{tü${n}}};`).join(' ');
+		const cautions = await cautionsFor('postgresql', null, sql);
+		expect(cautions.map((caution) => caution.sql)).toEqual(
+			Array.from({ length: 2000 }, (_, n) => `drop table {{tü${n}}}`)
+		);
+		expect(cautions[1999]?.lock?.on).toContain('{{tü1999}}');
 	});
 
 	it('keeps what it understands of a script of which one statement does not parse', async () => {
