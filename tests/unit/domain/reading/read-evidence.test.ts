@@ -12,7 +12,7 @@ import {
 } from '../../../fixtures/evidence-files';
 
 const PLAN =
-	"Seq Scan on crate c  (cost=0.00..9.10 rows=5 width=8) (actual time=0.010..0.200 rows=7 loops=2)\n  Filter: (state = 'open'::text)\n  Rows Removed by Filter: 3\n";
+	"Seq Scan on crate c  (cost=0.00..9.10 rows=5 width=8) (actual time=0.010..0.200 rows=7 loops=2)\n  Filter: (state = 'open'::text)\n  Rows Removed by Filter: 3\nExecution Time: 0.500 ms\n";
 
 describe('readText', () => {
 	test('keeps the evidence and says so when a reader meets what nobody foresaw', () => {

@@ -10,9 +10,8 @@ export function maskJsonPlan(text: string): string {
 
 /** Something else than JSON before, between or behind. */
 function hasWordsAround(text: string): boolean {
-	return (
-		!/^\s*[[{]/.test(text) || !/[\]}]\s*$/.test(text) || /\n[ >|]{0,2}[\]}][ \t+|]*\n\s*[^\s[\]{}]/.test(text)
-	);
+	if (!/^\s*[[{]/.test(text) || !/[\]}]/.test(text.trimEnd().slice(-1))) return true;
+	return /\n[ >|]{0,2}[\]}][ \t+|]*\n\s*[^\s[\]{}]/.test(text);
 }
 
 /** JSON begins at a line that opens a bracket and ends where one as far left closes; the rest is words and SQL. */
@@ -60,8 +59,10 @@ function maskDocument(text: string): string {
 		const raw = text.slice(at + 1, end);
 		const colon = colonBehind(text, end + 1);
 		if (colon >= 0) {
-			plain = isPlainKey(raw);
-			secret = !plain && isSecretName(raw);
+			// A figure has no string to mask: what key it stands under doesn't matter.
+			const figure = isFigureBehind(text, colon + 1);
+			plain = !figure && isPlainKey(raw);
+			secret = !figure && !plain && isSecretName(raw);
 			if (raw === 'Settings') settingsEnd = text.indexOf('}', colon);
 		} else if (!plain && at >= settingsEnd) {
 			const masked = secret ? MASKED : maskString(raw);
@@ -75,6 +76,12 @@ function maskDocument(text: string): string {
 	const masked = done === 0 ? text : out + text.slice(done);
 	// A quotation mark that was lost turns the inside of a string into its outside.
 	return masked.includes("'") ? masked.replace(/'(?:[^'"\\\n]|'')*'/g, '?') : masked;
+}
+
+/** Whether the value behind a colon is a number or a word and holds no string. */
+function isFigureBehind(text: string, from: number): boolean {
+	const code = text.charCodeAt(text.charCodeAt(from) === BLANK ? from + 1 : from);
+	return (code >= 48 && code <= 57) || code === 116 || code === 102;
 }
 
 /** Offset of the closing quotation mark; the end of the text where it was cut off. */

@@ -1,6 +1,6 @@
 import { noFacts, type OperatorFacts } from '../../operator';
 import { add, memoryFacts } from './memory-facts';
-import { estimate, figure, isRecord, isTrue, records, wordList, words, type PlanNode } from './plan-node';
+import { estimate, figure, isTrue, records, wordList, words, type PlanNode } from './plan-node';
 
 const ROLES: Record<string, OperatorFacts['role']> = {
 	Outer: 'outer',
@@ -102,43 +102,27 @@ function overProcesses(node: PlanNode, key: string): number | null {
 	);
 }
 
-/** Keys that have a field of their own or are printed always and say nothing. */
-const KNOWN = new Set(
-	(
-		'Node Type,Parent Relationship,Subplan Name,Strategy,Partial Mode,Parallel Aware,Async Capable,Join Type,' +
-		'Inner Unique,Relation Name,Schema,Alias,Index Name,CTE Name,Function Name,Table Function Name,' +
-		'Custom Plan Provider,Startup Cost,Total Cost,Plan Rows,Plan Width,Actual Startup Time,Actual Total Time,' +
-		'Actual Rows,Actual Loops,Output,Filter,Join Filter,Index Cond,Recheck Cond,Hash Cond,Merge Cond,Sort Key,' +
-		'Presorted Key,Group Key,Grouping Sets,Rows Removed by Filter,Rows Removed by Join Filter,' +
-		'Rows Removed by Index Recheck,Heap Fetches,Exact Heap Blocks,Lossy Heap Blocks,Workers Planned,' +
-		'Workers Launched,Shared Hit Blocks,Shared Read Blocks,Shared Dirtied Blocks,Shared Written Blocks,' +
-		'Local Hit Blocks,Local Read Blocks,Local Dirtied Blocks,Local Written Blocks,Temp Read Blocks,' +
-		'Temp Written Blocks,I/O Read Time,I/O Write Time,Temp I/O Read Time,Temp I/O Write Time,' +
-		'Shared I/O Read Time,Shared I/O Write Time,Local I/O Read Time,Local I/O Write Time,WAL Records,WAL FPI,' +
-		'WAL Bytes,WAL Buffers Full,Hash Buckets,Original Hash Buckets,Hash Batches,Original Hash Batches,' +
-		'Peak Memory Usage,Sort Method,Sort Space Used,Sort Space Type,Full-sort Groups,Pre-sorted Groups,' +
-		'Planned Partitions,HashAgg Batches,Disk Usage,Cache Hits,Cache Misses,Cache Evictions,Cache Overflows,' +
-		'Storage,Maximum Storage,Plans,Workers,JIT,Group Sets,' +
-		OTHER_CONDITIONS.join(',')
-	).split(',')
-);
+/** Keys without a field of their own that tell operators apart. */
+const EXTRA = [
+	'Scan Direction',
+	'Subplans Removed',
+	'Index Searches',
+	'Window',
+	'Cache Key',
+	'Cache Mode',
+	'Function Call',
+	'Conflict Resolution',
+	'Disabled',
+	'Remote SQL'
+];
 
 function readExtra(node: PlanNode, facts: OperatorFacts): void {
-	for (const key in node) {
-		if (KNOWN.has(key)) continue;
+	for (const key of EXTRA) {
 		const value = node[key];
 		// The text form leaves these out.
-		if (
-			value === false ||
-			value === 0 ||
-			value === '0' ||
-			value === 'false' ||
-			value === 'Forward' ||
-			isRecord(value)
-		)
-			continue;
+		if (value === undefined || value === false || value === 'false' || value === 'Forward') continue;
+		if (value === 0 || value === '0') continue;
 		if (typeof value === 'string' || typeof value === 'number' || value === true)
 			facts.extra[key] = String(value);
-		else if (Array.isArray(value)) facts.extra[key] = wordList(value).join(', ');
 	}
 }

@@ -1,11 +1,11 @@
 import { BOUNDS } from '../../bounds';
-import type { OperatorFacts, PlanOperator } from '../../operator';
+import { walkOperators, type OperatorFacts, type PlanOperator } from '../../operator';
 import type { ReadingWarning } from '../../reading';
 import { add, largest } from './memory-facts';
 import { readFacts } from './operator-facts';
 import { operatorKind, operatorName } from './operator-name';
 import { figure, records, words, type PlanNode } from './plan-node';
-import { ownShares } from './shares';
+import { fillOwnShares, type SharedFigure } from './shares';
 
 const BLOCK_BYTES = 8192;
 
@@ -121,16 +121,34 @@ function peakMemoryKb(facts: OperatorFacts): number | null {
 	]);
 }
 
+const sameWeight = (_parent: PlanOperator, value: number) => value;
+
+const WRITTEN: SharedFigure = {
+	inclusive: ({ facts }) => facts.tempWrittenBlocks,
+	own: ({ facts }) => facts.ownTempWrittenBlocks,
+	setOwn: ({ facts }, value) => (facts.ownTempWrittenBlocks = value),
+	asParent: sameWeight
+};
+const READ: SharedFigure = {
+	inclusive: ({ facts }) => facts.tempReadBlocks,
+	own: ({ facts }) => facts.ownTempReadBlocks,
+	setOwn: ({ facts }, value) => (facts.ownTempReadBlocks = value),
+	asParent: sameWeight
+};
+const TIME: SharedFigure = {
+	inclusive: ({ totalMs }) => totalMs,
+	own: ({ selfMs }) => selfMs,
+	setOwn: (operator, value) => (operator.selfMs = value),
+	asParent: wallTime
+};
+
 function fillOwnFigures(root: PlanOperator): void {
-	const same = (_parent: PlanOperator, value: number) => value;
-	const written = ownShares(root, ({ facts }) => facts.tempWrittenBlocks, same);
-	const read = ownShares(root, ({ facts }) => facts.tempReadBlocks, same);
-	const ms = ownShares(root, (operator) => operator.totalMs, wallTime);
-	for (const [operator, own] of written) {
-		operator.facts.ownTempWrittenBlocks = own;
-		operator.facts.ownTempReadBlocks = read.get(operator) ?? null;
-		operator.selfMs = times(ms.get(operator) ?? null, 1);
-		operator.temporaryBytes = own === null ? reportedDiskBytes(operator.facts) : own * BLOCK_BYTES;
+	for (const figure of [WRITTEN, READ, TIME]) fillOwnShares(root, figure);
+	for (const operator of walkOperators(root)) {
+		const { ownTempWrittenBlocks } = operator.facts;
+		operator.selfMs = times(operator.selfMs, 1);
+		operator.temporaryBytes =
+			ownTempWrittenBlocks === null ? reportedDiskBytes(operator.facts) : ownTempWrittenBlocks * BLOCK_BYTES;
 	}
 }
 

@@ -1,7 +1,16 @@
 import type { PlanOperator } from '../../operator';
 
+/** One figure of a plan: as printed, with everything below, and as it is worked out for the operator alone. */
+export interface SharedFigure {
+	inclusive(operator: PlanOperator): number | null;
+	own(operator: PlanOperator): number | null;
+	setOwn(operator: PlanOperator, value: number | null): void;
+	/** What a child's figure weighs in its parent's. */
+	asParent(parent: PlanOperator, value: number): number;
+}
+
 /**
- * What each operator took for itself, of a figure that PostgreSQL prints with everything below it.
+ * Works out what each operator took for itself, of a figure that PostgreSQL prints with everything below it.
  *
  * - Ordinary children and SubPlans count inside the operator that they hang under.
  * - InitPlans and CTEs do not: whoever reads their rows first is charged with them. That is a CTE Scan of that
@@ -9,47 +18,35 @@ import type { PlanOperator } from '../../operator';
  *   Which of several readers came first is not printed either, so the largest share pays first.
  * - Below Gather, figures are sums over processes, Gather's own is wall time: `asParent` turns one into the other.
  */
-export function ownShares(
-	root: PlanOperator,
-	inclusive: (operator: PlanOperator) => number | null,
-	asParent: (parent: PlanOperator, value: number) => number
-): Map<PlanOperator, number | null> {
-	const own = new Map<PlanOperator, number | null>();
+export function fillOwnShares(root: PlanOperator, figure: SharedFigure): void {
 	const deferred: { owner: PlanOperator; plan: PlanOperator }[] = [];
 	const stack = [root];
 	for (let next = stack.pop(); next !== undefined; next = stack.pop()) {
-		const total = inclusive(next);
-		let rest = total;
+		let rest = figure.inclusive(next);
 		for (const child of next.children) {
 			stack.push(child);
 			if (isDeferred(child)) deferred.push({ owner: next, plan: child });
-			else if (rest !== null) rest -= asParent(next, inclusive(child) ?? 0);
+			else if (rest !== null) rest -= figure.asParent(next, figure.inclusive(child) ?? 0);
 		}
-		own.set(next, rest === null ? null : Math.max(0, rest));
+		figure.setOwn(next, rest === null ? null : Math.max(0, rest));
 	}
-	for (const { owner, plan } of deferred) charge(owner, plan, inclusive(plan) ?? 0, own);
-	return own;
+	for (const { owner, plan } of deferred) charge(owner, plan, figure);
 }
 
 function isDeferred(child: PlanOperator): boolean {
 	return child.facts.role === 'init-plan' || child.facts.role === 'cte';
 }
 
-function charge(
-	owner: PlanOperator,
-	plan: PlanOperator,
-	amount: number,
-	own: Map<PlanOperator, number | null>
-): void {
-	if (amount <= 0) return;
-	let left = amount;
+function charge(owner: PlanOperator, plan: PlanOperator, figure: SharedFigure): void {
+	let left = figure.inclusive(plan) ?? 0;
+	if (left <= 0) return;
 	const payers = readersOf(owner, plan);
 	if (payers.length === 0) payers.push(owner);
-	payers.sort((a, b) => (own.get(b) ?? 0) - (own.get(a) ?? 0));
+	payers.sort((a, b) => (figure.own(b) ?? 0) - (figure.own(a) ?? 0));
 	for (const payer of payers) {
-		const has = own.get(payer) ?? 0;
+		const has = figure.own(payer) ?? 0;
 		const pays = Math.min(has, left);
-		if (pays > 0) own.set(payer, has - pays);
+		if (pays > 0) figure.setOwn(payer, has - pays);
 		left -= pays;
 	}
 }
