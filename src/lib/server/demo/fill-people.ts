@@ -4,7 +4,8 @@ import { write } from '../db/transaction';
 import { DEMO_PASSWORD } from '../people/demo-password';
 import { hashPassword } from '../people/password';
 import { insertPerson } from '../people/people-store';
-import { findRunbook, updateKeepers } from '../runbooks/runbook-store';
+import { findRunbook } from '../runbooks/runbook-store';
+import { updateKeepers } from '../runbooks/runbook-write-store';
 import { runbookChanged } from '../search/indexing';
 import type { DemoPerson } from './demo-content';
 

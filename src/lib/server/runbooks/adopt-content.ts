@@ -11,7 +11,8 @@ import { write } from '../db/transaction';
 import { log } from '../log';
 import { runbookChanged } from '../search/indexing';
 import { contentRunbooks, type ContentRunbook } from './content-runbooks';
-import { insertRunbook, listSlugs } from './runbook-store';
+import { listSlugs } from './runbook-store';
+import { insertRunbook } from './runbook-write-store';
 import { weighBody } from './weigh-runbook';
 
 /** Set once the runbooks that Catchwater comes with were taken in: what a team retires stays retired. */

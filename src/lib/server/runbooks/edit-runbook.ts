@@ -11,14 +11,8 @@ import { write, type Transaction } from '../db/transaction';
 import { runbookChanged } from '../search/indexing';
 import { standingOf, toWork } from './describe-runbook';
 import { changedMeanwhile, noRunbook } from './refusals';
-import {
-	findNewest,
-	insertRevision,
-	insertRunbook,
-	listSlugs,
-	updatePlace,
-	type StoredRunbook
-} from './runbook-store';
+import { findNewest, listSlugs, type StoredRunbook } from './runbook-store';
+import { insertRevision, insertRunbook, updatePlace } from './runbook-write-store';
 
 /** The newest text of a runbook, just written or moved; that it is there is certain. */
 export async function readNewest(slug: string): Promise<Outcome<Runbook>> {

@@ -13,7 +13,8 @@ import { readNewest } from './edit-runbook';
 import { listPublishReasons } from './publish-reasons';
 import { changedMeanwhile, noRunbook, refused } from './refusals';
 import { insertEvent, listEvents } from './revision-store';
-import { findNewest, updatePlace, type RunbookPlace, type StoredRunbook } from './runbook-store';
+import { findNewest, type StoredRunbook } from './runbook-store';
+import { updatePlace, type RunbookPlace } from './runbook-write-store';
 
 /** What somebody does, and the revision that they had before them; null: they did not say. */
 interface Move {

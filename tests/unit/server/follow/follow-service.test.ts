@@ -7,7 +7,7 @@ import * as evidence from '$lib/server/evidence/evidence-service';
 import * as follow from '$lib/server/follow/follow-service';
 import * as attempts from '$lib/server/incidents/attempts-service';
 import * as incidents from '$lib/server/incidents/incidents-service';
-import { insertRunbook } from '$lib/server/runbooks/runbook-store';
+import { insertRunbook } from '$lib/server/runbooks/runbook-write-store';
 import { readSide } from '../../../fixtures/compare';
 import { withDatabase } from '../../../fixtures/database';
 import { makeIncident } from '../../../fixtures/factories/incident';

@@ -3,7 +3,7 @@ import { SYSTEM, type Actor } from '$lib/domain/person/person';
 import { write } from '$lib/server/db/transaction';
 import { select } from '$lib/server/db/query';
 import * as attempts from '$lib/server/incidents/attempts-service';
-import { insertRunbook } from '$lib/server/runbooks/runbook-store';
+import { insertRunbook } from '$lib/server/runbooks/runbook-write-store';
 import * as runbooks from '$lib/server/runbooks/runbooks-service';
 import { withDatabase } from '../../../fixtures/database';
 import { makeIncident } from '../../../fixtures/factories/incident';
