@@ -9,7 +9,7 @@ import { BLOCK_BYTES, BYTES_PER_KB } from './units';
 /** A process of a parallel aggregate may meet more groups in the next run than on average in this one. */
 const SHARE_MARGIN = 1.15;
 /** Whole context blocks are counted; what is left is how full the bucket array gets. */
-const MARGIN = 1.01;
+const MARGIN = 1.02;
 const LEAST_LIMIT_SHARE = 0.75;
 
 /** The work_mem at which a hash aggregate that spilled keeps its groups in memory. */

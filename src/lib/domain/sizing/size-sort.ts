@@ -11,6 +11,8 @@ import { BYTES_PER_KB } from './units';
 const MEAN_ROUNDING_BYTES = 3.5;
 /** A process may get this much more of a parallel scan in the next run than it got in this one. */
 const SHARE_MARGIN = 1.1;
+/** Where one process comes too late, the others share the scan, block by block and so not quite evenly. */
+const ABSENT_MARGIN = 1.04;
 /** On tape a single column sorted without tuples is its value and a length word. */
 const LENGTH_WORD_BYTES = 4;
 /** Columns by value are sorted so from 15 on, others from some later version on: 18 does, 15 does not (both seen). */
@@ -116,7 +118,10 @@ function rowsOfOneProcess(sort: PlanOperator, place: SortPlace, processes: numbe
 	}
 	const sorts = sort.facts.sorts;
 	const largest = Math.max(...sorts.map((each) => each.usedKb ?? 0)) / Math.max(1, sumKb(sorts));
-	return place.inputRows * Math.max(1 / (processes - 1), Math.min(1, largest * SHARE_MARGIN));
+	return (
+		place.inputRows *
+		Math.max(Math.min(1, ABSENT_MARGIN / (processes - 1)), Math.min(1, largest * SHARE_MARGIN))
+	);
 }
 
 /** An incremental sort holds one group at a time; the largest is known by its file. */
