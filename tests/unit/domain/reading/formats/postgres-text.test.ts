@@ -79,7 +79,6 @@ describe('postgres-text', () => {
 		['indented by tabs', TEXT.replace(/^ +/gm, (blanks) => '\t'.repeat(Math.ceil(blanks.length / 2)))],
 		['indented by half', TEXT.replace(/^ +/gm, (blanks) => ' '.repeat(blanks.length / 2))],
 		['behind tabs, as in a log', indent(TEXT, '\t')],
-		['with the end cut off', PLAN.slice(0, 14).join('\n')],
 		[
 			'with its long lines broken',
 			TEXT.replaceAll(' (actual', '\n(actual').replaceAll(' rows=100 width', '\nrows=100 width')
@@ -89,6 +88,39 @@ describe('postgres-text', () => {
 		expect(reading.format).toBe('postgres-text');
 		expect(reading.plan === null ? '' : shapeOf(reading.plan.root)).toBe(SHAPE);
 		expect(reading.warnings).toEqual([]);
+	});
+
+	// Each a line of EXPLAIN's own order: figures first, Execution Time last; psql counts the rows below.
+	test.each([
+		['behind the last operator', PLAN.slice(0, 14).join('\n')],
+		['between two operators', PLAN.slice(0, 8).join('\n')],
+		[
+			'within an operator',
+			`${PLAN.slice(0, 4).join('\n')}\n  ->  Hash Left Join  (cost=1.00..9.00 rows=100 width=14) (act`
+		],
+		['before the time of execution', PLAN.slice(0, 16).join('\n')],
+		[
+			'out of psql, without figures',
+			`  QUERY PLAN\n------\n Limit  (cost=0.00..1.00 rows=1 width=4)\n   ->  Seq Scan on crate  (cost=0.00..9.00 rows=9 width=4)\n`
+		]
+	])('says that a plan is cut off %s', async (_where, text) => {
+		const reading = await readOne(text);
+		expect(reading.plan).not.toBeNull();
+		expect(reading.warnings.map(({ code }) => code)).toContain('cut-off');
+	});
+
+	test.each([
+		[
+			'estimates alone',
+			'Limit  (cost=0.00..1.00 rows=1 width=4)\n  ->  Seq Scan on crate  (cost=0.00..9.00 rows=9 width=4)\n'
+		],
+		[
+			'estimates out of psql',
+			' QUERY PLAN\n------\n Seq Scan on crate  (cost=0.00..9.00 rows=9 width=4)\n(1 row)\n'
+		],
+		['a plan of auto_explain', `Query Text: select 1\n${PLAN.slice(0, 15).join('\n')}\n`]
+	])('takes %s for whole', async (_what, text) => {
+		expect((await readOne(text)).warnings).toEqual([]);
 	});
 
 	test('works out the nesting where the indentation was lost, and says so', async () => {
