@@ -176,3 +176,21 @@ describe('maskEvidence', () => {
 		expect(await mask(bytes)).toBe(new TextDecoder().decode(bytes));
 	});
 });
+
+describe('maskEvidence on the data that COPY quotes', () => {
+	// copyfrom.c, CopyFromErrorCallback: "COPY %s, line %d, column %s: \"%s\"" and "COPY %s, line %d: \"%s\"".
+	const errors = ['COPY booking, line 3, column note: "Zimt"', 'COPY freight.booking, line 4: "1\tZimt\tx"'];
+	const time = '2026-03-01 10:00:00.000 UTC';
+	test.each(
+		errors.flatMap((context) => [
+			[`${time} [42] app@freight ERROR:  invalid input\n${time} [42] app@freight CONTEXT:  ${context}\n`],
+			[
+				`${JSON.stringify({ timestamp: time, pid: 42, error_severity: 'ERROR', message: 'invalid input', context })}\n`
+			]
+		])
+	)('keeps none of it: %s', async (log) => {
+		const masked = await mask(log);
+		expect(masked).not.toContain('Zimt');
+		expect(masked).toContain('COPY');
+	});
+});

@@ -7,8 +7,9 @@ import { maskSecrets } from '../../secrets';
 import { planBodyForm } from './plan-body';
 
 const DURATION = /^\S+: [\d.,]+ ms {2}/;
+/** `COPY booking, line 3, column note: "…"` is no statement: it quotes the data (copyfrom.c, CopyFromErrorCallback). */
 const SQL_VERB =
-	/\s*(?:select|with|insert|update|delete|merge|values|execute|prepare|table|create|alter|drop|refresh|declare|fetch|copy|call|do|explain|set|begin|commit|analyze|vacuum|reindex|cluster|truncate|grant|revoke|lock)\b/iy;
+	/\s*(?:select|with|insert|update|delete|merge|values|execute|prepare|table|create|alter|drop|refresh|declare|fetch|copy(?!\s+[^\n]{1,200}?, line \d)|call|do|explain|set|begin|commit|analyze|vacuum|reindex|cluster|truncate|grant|revoke|lock)\b/iy;
 
 /** The message of a log record, further lines included, with its literals masked. */
 export function maskLogMessage(message: string): string {
