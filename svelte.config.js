@@ -27,6 +27,8 @@ export default {
 				'frame-ancestors': ['none']
 			}
 		},
+		// An error page stands under another address than the page that it is drawn from: relative paths miss.
+		paths: { relative: false },
 		typescript: {
 			config: (config) => ({
 				...config,
