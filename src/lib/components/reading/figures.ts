@@ -29,8 +29,16 @@ export function formatFigure(name: string, value: number | string): string {
 	return formatRows(value);
 }
 
+/** Figures whose names the trade knows and a reader need not. */
+const NAMED = new Map([
+	['q', 'times off'],
+	['predicates', 'conditions']
+]);
+
 /** A figure's name in words, its unit left to the value: "plannedBatches" → "planned batches". */
 export function nameFigure(name: string): string {
+	const known = NAMED.get(name);
+	if (known !== undefined) return known;
 	return name
 		.replace(/(Kb|Bytes|Ms|Seconds)$/, '')
 		.replace(/([a-z])([A-Z])/g, '$1 $2')

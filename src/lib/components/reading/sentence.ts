@@ -28,3 +28,14 @@ export function wordsToMark(reading: Reading, operators: ReadonlyMap<string, Ope
 		.filter(({ path, temporaryBytes }) => path === first || path === last || (temporaryBytes ?? 0) > 0)
 		.map(phraseOperator);
 }
+
+/** The heading over the sentence: a plan can be far off without overflowing. */
+export function headOverflow(reading: Reading): string {
+	const { trails, spills, symptoms } = reading;
+	const overflows =
+		trails.some(({ overflow }) => overflow !== null) ||
+		(spills !== null && spills.files > 0) ||
+		symptoms.some(({ id }) => id.endsWith('-spill') || id === 'temp-table-on-disk');
+	if (overflows || trails.length === 0) return 'Where it overflows';
+	return 'Where the estimate goes wrong';
+}
