@@ -18,8 +18,7 @@ function isSaid(text: string | null): boolean {
 /** Why an incident can't be called resolved yet; empty: nothing is missing. */
 export function findMissingForResolved(facts: Pick<MoveFacts, 'cause' | 'resolution'>): string[] {
 	const reasons: string[] = [];
-	if (!isSaid(facts.cause))
-		reasons.push("Name the cause (cause); 'not found' is an answer when nobody found it.");
+	if (!isSaid(facts.cause)) reasons.push("Name the cause; 'not found' is an answer when nobody found it.");
 	if (!isSaid(facts.resolution)) reasons.push('Say what ended it (resolution).');
 	return reasons;
 }
