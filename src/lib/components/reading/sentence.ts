@@ -6,7 +6,13 @@ import { formatBytes, formatRows } from '$lib/domain/sizing/units';
 /** The one sentence that a reading answers with, before any figure: its trail, its heaviest symptom, or that all is well. */
 export function sayWhatOverflows(reading: Reading): string {
 	const trail = reading.trails[0];
-	if (trail !== undefined) return trail.sentence;
+	if (trail !== undefined) {
+		// The misestimate may lie elsewhere than the overflow: then both are said, the harm first.
+		const spill = reading.symptoms.find(({ id }) => id.endsWith('-spill'));
+		return trail.overflow === null && spill !== undefined
+			? `${spill.summary} ${trail.sentence}`
+			: trail.sentence;
+	}
 	const heaviest = reading.symptoms[0];
 	if (heaviest !== undefined) return heaviest.summary;
 	if (reading.spills !== null && reading.spills.files > 0)
