@@ -27,7 +27,7 @@ const LOOKS: readonly (readonly [RegExp, string, string])[] = [
 		'This is a JSON plan of MySQL, which Catchwater does not read yet.'
 	],
 	[
-		/^\s*\|?\s*-> .*\((?:cost=[\d.e+]+ rows=|actual time=[\d.]+\.\.[\d.]+ rows=)/m,
+		/^[ \t]*\|?[ \t]*-> .*\((?:cost=[\d.e+]+ rows=|actual time=[\d.]+\.\.[\d.]+ rows=)/m,
 		'mysql-tree',
 		"This is MySQL's plan as a tree, which Catchwater does not read yet."
 	],
@@ -47,7 +47,7 @@ const LOOKS: readonly (readonly [RegExp, string, string])[] = [
 		"This is PostgreSQL's log as JSON, which Catchwater does not read yet; the stderr form of it works."
 	],
 	[
-		/^\s*-? ?Plan: *$|^\s*Node Type: "/m,
+		/^[ \t]*-? ?Plan: *$|^[ \t]*Node Type: "/m,
 		'postgres-yaml',
 		'This is a plan as YAML; FORMAT JSON or the text form of it works.'
 	],

@@ -74,8 +74,11 @@ async function* rest(head: Uint8Array, iterator: AsyncIterator<Uint8Array>): Asy
 	for (let next = await iterator.next(); next.done !== true; next = await iterator.next()) yield next.value;
 }
 
+const PIECE_BYTES = 256 * 1024;
+
 async function* joined(first: Uint8Array, more: AsyncIterable<Uint8Array>): AsyncIterable<Uint8Array> {
-	yield first;
+	// In pieces: masking holds each as a list of its lines.
+	for (let at = 0; at < first.length; at += PIECE_BYTES) yield first.subarray(at, at + PIECE_BYTES);
 	yield* more;
 }
 

@@ -12,7 +12,7 @@ export const postgresYaml: TextFormat = {
 	format: 'postgres-yaml',
 	engine: 'postgresql',
 	kind: 'plan',
-	recognise: (head) => /^[\s>|\u2502]*(?:- )?(?:Plan: *[+|\u2502\u21b5]*[ \t+|]*$|Node Type: ")/m.test(head),
+	recognise: (head) => /^[ \t>|\u2502]*(?:- )?(?:Plan: *[+|\u2502\u21b5]*[ \t+|]*$|Node Type: ")/m.test(head),
 	mask: maskYamlPlan,
 	read: readPostgresYaml
 };
@@ -38,7 +38,7 @@ export function readPostgresYaml(text: string): FormatResult {
 		const lines = unknown === 1 ? '1 line is' : `${unknown} lines are`;
 		warnings.push({
 			code: 'lines-not-understood',
-			message: `${lines} not part of a plan and passed over.`,
+			message: `${lines} no part of a plan and passed over.`,
 			at: null
 		});
 	}

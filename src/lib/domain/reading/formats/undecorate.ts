@@ -22,6 +22,7 @@ const MARGIN = /[+\u21b5][ \t]*[|\u2502]?[ \t]*$/;
 const BORDER = /^[ \t]*[|\u2502](?=[ \t])/;
 
 function blankLine(line: string, quoted: boolean, margin: boolean): string {
+	if (line === '') return line;
 	if (FRAME.test(line) || HEADER.test(line) || FENCE.test(line) || FOOTER.test(line))
 		return ' '.repeat(line.length);
 	let rest = quoted ? line.replace(/^(?:[ \t]*>)+/, blanks) : line;

@@ -34,6 +34,10 @@ export function maskTextPlan(text: string): string {
 	};
 	for (let i = 0; i < lines.length; i++) {
 		const line = lines[i] ?? '';
+		if (line === '') {
+			between.push(line);
+			continue;
+		}
 		if (isPlainLine(line)) {
 			flush();
 			out.push(line);
@@ -60,11 +64,14 @@ export function maskTextPlan(text: string): string {
 	return out.join('\n');
 }
 
+/** What every such line holds; most others hold none of it. */
+const MAY_BE_PLAIN = /[(=>\u2500-\u257f]|--|: |Plan \d/;
+
 /** What stands above a plan of auto_explain. */
 const DURATION = /\bduration: [\d.]+ ms {1,2}plan:\s*$/;
 
 function isPlainLine(line: string): boolean {
-	if (line.length > PLAIN_LENGTH) return false;
+	if (line.length > PLAIN_LENGTH || !MAY_BE_PLAIN.test(line)) return false;
 	if (line.includes(' plan:') && DURATION.test(line))
 		return !/['"$@]/.test(line) && maskSecrets(line) === line;
 	return PLAIN_LINES.some((pattern) => pattern.test(line));

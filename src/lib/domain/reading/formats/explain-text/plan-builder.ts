@@ -19,6 +19,7 @@ export class PlanBuilder {
 	ended = false;
 	private readonly nodes: PlanNode[];
 	private readonly levels: Level[];
+	private readonly fed = new Set<PlanNode>();
 	private last: PlanNode;
 	private worker: { column: number; figures: PlanNode } | null = null;
 	private open: { key: string; value: string; into: PlanNode } | null = null;
@@ -44,7 +45,7 @@ export class PlanBuilder {
 			node['Subplan Name'] = label;
 			node['Parent Relationship'] = label.startsWith('SubPlan') ? 'SubPlan' : 'InitPlan';
 		}
-		adopt(parent, node);
+		adopt(parent, node, this.fed);
 		this.nodes.push(node);
 		this.levels.push({ column, node, label: null });
 		this.last = node;
@@ -110,11 +111,12 @@ export class PlanBuilder {
 	}
 }
 
-function adopt(parent: PlanNode, node: PlanNode): void {
+/** Puts a node under its parent. Whether a parent has an ordinary child already is kept beside the tree. */
+function adopt(parent: PlanNode, node: PlanNode, fed: Set<PlanNode>): void {
 	const plans = Array.isArray(parent['Plans']) ? parent['Plans'] : [];
 	if (node['Subplan Name'] === undefined) {
-		const ordinary = plans.filter((plan: PlanNode) => plan['Subplan Name'] === undefined).length;
-		node['Parent Relationship'] = relationshipOf(parent['Node Type'], ordinary);
+		node['Parent Relationship'] = relationshipOf(parent['Node Type'], fed.has(parent) ? 1 : 0);
+		fed.add(parent);
 	}
 	plans.push(node);
 	parent['Plans'] = plans;
@@ -132,6 +134,7 @@ function isOpen(value: string): boolean {
 /** Without indentation, operators in printed order nest by how many inputs each takes; lists take what is left. */
 function nestByArity(nodes: PlanNode[]): void {
 	const wanting: { node: PlanNode; left: number }[] = [];
+	const fed = new Set<PlanNode>();
 	for (const node of nodes) {
 		delete node['Plans'];
 		while (wanting.length > 0 && wanting[wanting.length - 1]?.left === 0) wanting.pop();
@@ -139,8 +142,8 @@ function nestByArity(nodes: PlanNode[]): void {
 		if (parent !== undefined) {
 			parent.left--;
 			delete node['Subplan Name'];
-			adopt(parent.node, node);
-		} else if (node !== nodes[0] && nodes[0] !== undefined) adopt(nodes[0], node);
+			adopt(parent.node, node, fed);
+		} else if (node !== nodes[0] && nodes[0] !== undefined) adopt(nodes[0], node, fed);
 		wanting.push({ node, left: childrenOf(node['Node Type']) ?? Infinity });
 	}
 }

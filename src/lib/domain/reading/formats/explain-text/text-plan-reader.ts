@@ -167,7 +167,7 @@ export class TextPlanReader {
 		const at = this.firstUnknown === null ? null : { line: this.firstUnknown + 1, column: 1 };
 		this.warnings.push({
 			code: 'lines-not-understood',
-			message: `${lines} not part of a plan and was passed over.`,
+			message: `${lines} no part of a plan and passed over.`,
 			at
 		});
 	}

@@ -8,7 +8,7 @@ import { readPostgresYaml } from '../postgres-yaml';
 export function planBodyForm(body: string): 'json' | 'yaml' | 'xml' | 'text' | null {
 	if (/^\s*\{/.test(body)) return 'json';
 	if (/^\s*<explain\b/.test(body)) return 'xml';
-	if (/^\s*Query Text: "/.test(body) && /^\s*Plan: ?$/m.test(body)) return 'yaml';
+	if (/^\s*Query Text: "/.test(body) && /^[ \t]*Plan: ?$/m.test(body)) return 'yaml';
 	return /^\s*Query Text:/.test(body) || /\((?:cost=\d|actual (?:time|rows)=)/.test(body) ? 'text' : null;
 }
 
