@@ -70,7 +70,7 @@ test('an engineer on call logs an incident, finds the precedent, follows the run
 	await expect(page.getByRole('heading', { name: 'It worked' })).toBeVisible();
 
 	await page.goto('/runbooks/refresh-statistics-of-one-table');
-	await expect(page.getByText(new RegExp(`worked ${workedBefore + 1} of`)).first()).toBeVisible();
+	await expect(page.getByText(new RegExp(`worked ${workedBefore + 1} of`, 'i')).first()).toBeVisible();
 
 	// What ended it, then found again by search.
 	await page.goto(`/incidents/${number}`);
