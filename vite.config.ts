@@ -63,6 +63,8 @@ export default defineConfig(({ mode }) =>
 				worker: { format: 'es' },
 				test: {
 					expect: { requireAssertions: true },
+					// Vitest leaves one core free by itself, which on two halves the speed.
+					maxWorkers: 2,
 					projects: [
 						{
 							extends: true,

@@ -104,9 +104,13 @@ async function browserTests(): Promise<void> {
 }
 
 await check('SvelteKit types', 'svelte-kit', ['sync']);
-await check('format', 'prettier', ['--check', '--log-level', 'warn', '.']);
-await check('lint', 'eslint', ['--config', '.config/eslint.config.js', '.']);
-await check('types', 'svelte-check', ['--tsconfig', './tsconfig.json', '--fail-on-warnings']);
+// Two cores: types are checked while the other two look at the text.
+await Promise.all([
+	check('types', 'svelte-check', ['--tsconfig', './tsconfig.json', '--fail-on-warnings']),
+	check('format', 'prettier', ['--check', '--log-level', 'warn', '.']).then(() =>
+		check('lint', 'eslint', ['--config', '.config/eslint.config.js', '.'])
+	)
+]);
 await unitTests();
 const application = await check('build of the application', 'vite', ['build', '--logLevel', 'warn']);
 const programs = await check('build of the programs', 'vite', [

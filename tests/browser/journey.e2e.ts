@@ -75,10 +75,12 @@ test('an engineer on call logs an incident, finds the precedent, follows the run
 	// What ended it, then found again by search.
 	await page.goto(`/incidents/${number}`);
 	await page.getByText('Resolved…').click();
-	await page.getByLabel('Cause', { exact: true }).selectOption('stale-statistics');
-	await page.getByLabel('What ended it?').fill('ANALYZE invoice_line after the bulk load.');
+	await page.getByRole('combobox', { name: 'Cause', exact: true }).selectOption('stale-statistics');
+	await page
+		.getByRole('textbox', { name: 'What ended it?' })
+		.fill('ANALYZE invoice_line after the bulk load.');
 	await page.getByRole('button', { name: 'Resolved', exact: true }).click();
-	await expect(page.getByText(/Resolved in/).first()).toBeVisible();
+	await expect(page.getByRole('heading', { name: 'What ended it' })).toBeVisible();
 
 	await page.keyboard.press('/');
 	await page.keyboard.type('fourth subsidary');
