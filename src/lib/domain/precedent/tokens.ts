@@ -13,14 +13,15 @@ export interface Word {
 const NAME = /[\p{L}\p{N}_$]+(?:\.[\p{L}_$][\p{L}\p{N}_$]*)*/gu;
 /** A word of one piece, as nearly all are: nothing to fold but its case. */
 const PLAIN = /^(?:[A-Za-z]?[a-z]*|[A-Z]+|\d+)$/;
-const ACCENTS = /\p{M}/gu;
+/** What folding takes away: accents, and whatever else a compatibility form falls apart into (U+FC5E: a space). */
+const NO_PART_OF_A_NAME = /[^\p{L}\p{N}_$.]/gu;
 /** Where one word of a camelCase name ends. */
 const HUMP = /(?<=[\p{Ll}\p{N}])(?=\p{Lu})/u;
 const LETTER = /[\p{L}\p{N}]/u;
 const UNDERSCORED = /[\p{L}\p{N}]_+[\p{L}\p{N}]/u;
 
 function fold(text: string): string {
-	return text.normalize('NFKD').replace(ACCENTS, '').toLowerCase();
+	return text.normalize('NFKD').replace(NO_PART_OF_A_NAME, '').toLowerCase();
 }
 
 /**
@@ -41,7 +42,8 @@ function pushParts(words: Word[], name: string, index: number): void {
 	let start = index;
 	for (const piece of name.split(/([._$]+)/)) {
 		for (const part of piece.split(HUMP)) {
-			if (LETTER.test(part)) words.push({ text: fold(part), start, end: start + part.length });
+			const text = fold(part);
+			if (LETTER.test(text)) words.push({ text, start, end: start + part.length });
 			start += part.length;
 		}
 	}
@@ -55,9 +57,10 @@ export function findNames(text: string): string[] {
 		const folded = fold(name);
 		const pieces = folded.split('.');
 		for (const piece of pieces) {
-			if (UNDERSCORED.test(piece) || (pieces.length === 1 && HUMP.test(name))) names.push(piece);
+			if (UNDERSCORED.test(piece) || (pieces.length === 1 && piece !== '' && HUMP.test(name)))
+				names.push(piece);
 		}
-		if (pieces.length > 1) names.push(folded);
+		if (pieces.length > 1 && LETTER.test(folded)) names.push(folded);
 	}
 	return names;
 }

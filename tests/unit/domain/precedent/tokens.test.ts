@@ -53,6 +53,10 @@ describe('termsOf', () => {
 		expect(stemsOf('scans of yard move spilling')).toEqual(['scan', 'yard', 'mov', 'spill']);
 	});
 
+	it('yields no blank where a letter falls apart into a space and a mark', () => {
+		expect(termsOf('\uFC5E spill')).toEqual(['spill']);
+	});
+
 	it('yields terms without a space or a sign that full-text search gives a meaning', () => {
 		fc.assert(
 			fc.property(fc.string({ unit: 'binary' }), (text) => {
