@@ -71,6 +71,7 @@ export default defineConfig(({ mode }) =>
 							test: {
 								name: 'server',
 								environment: 'node',
+								setupFiles: ['tests/fixtures/seed.ts'],
 								include: ['tests/unit/**/*.test.ts'],
 								exclude: ['tests/unit/**/*.svelte.test.ts'],
 								testTimeout: 30_000,
